@@ -1,0 +1,22 @@
+import { ChangeDetectionStrategy, Component } from '@angular/core';
+import { EmptyState } from '../../ui/empty-state/empty-state';
+
+@Component({
+  selector: 'app-custody',
+  imports: [EmptyState],
+  template: `
+    <h2>Custody</h2>
+    <ui-empty-state text="This section is not in this version yet."
+      >It will hold the ledger of hand-overs and its checks.</ui-empty-state
+    >
+  `,
+  styles: `
+    :host {
+      display: grid;
+      gap: 12px;
+      padding: var(--gutter);
+    }
+  `,
+  changeDetection: ChangeDetectionStrategy.OnPush,
+})
+export class Custody {}

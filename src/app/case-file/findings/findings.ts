@@ -1,0 +1,22 @@
+import { ChangeDetectionStrategy, Component } from '@angular/core';
+import { EmptyState } from '../../ui/empty-state/empty-state';
+
+@Component({
+  selector: 'app-findings',
+  imports: [EmptyState],
+  template: `
+    <h2>Findings</h2>
+    <ui-empty-state text="This section is not in this version yet."
+      >It will hold the answers to the questions with their figures.</ui-empty-state
+    >
+  `,
+  styles: `
+    :host {
+      display: grid;
+      gap: 12px;
+      padding: var(--gutter);
+    }
+  `,
+  changeDetection: ChangeDetectionStrategy.OnPush,
+})
+export class Findings {}
