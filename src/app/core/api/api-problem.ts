@@ -19,7 +19,7 @@ export class ApiProblem extends Error {
     readonly detail = '',
     readonly errors: readonly FieldError[] = [],
     /** On 412: the record as it is now, unread. */
-    readonly current: unknown = undefined,
+    readonly current?: unknown,
   ) {
     super(detail || title);
   }
