@@ -39,11 +39,12 @@ export interface Endpoint<
   Q extends z.ZodObject = z.ZodObject,
   B extends z.ZodType = z.ZodType,
   R extends z.ZodType | Binary | null = z.ZodType | Binary | null,
+  A extends AccessRule = AccessRule,
 > {
   readonly method: 'GET' | 'POST' | 'PUT' | 'PATCH' | 'DELETE';
   readonly path: `/api/${string}`;
   readonly summary: string;
-  readonly access: AccessRule;
+  readonly access: A;
   readonly params: P;
   readonly query: Q;
   readonly body: B;
@@ -65,11 +66,12 @@ interface EndpointInput<
   Q extends z.ZodObject,
   B extends z.ZodType,
   R extends z.ZodType | Binary | null,
+  A extends AccessRule,
 > {
   method: Endpoint['method'];
   path: Endpoint['path'];
   summary: string;
-  access: AccessRule;
+  access: A;
   params?: P;
   query?: Q;
   body?: B;
@@ -82,10 +84,11 @@ interface EndpointInput<
 
 export function endpoint<
   R extends z.ZodType | Binary | null,
+  A extends AccessRule,
   P extends z.ZodObject = z.ZodObject<Record<never, never>>,
   Q extends z.ZodObject = z.ZodObject<Record<never, never>>,
   B extends z.ZodType = z.ZodUndefined,
->(input: EndpointInput<P, Q, B, R>): Endpoint<P, Q, B, R> {
+>(input: EndpointInput<P, Q, B, R, A>): Endpoint<P, Q, B, R, A> {
   return {
     params: nothing as unknown as P,
     query: nothing as unknown as Q,
