@@ -1,0 +1,278 @@
+import { applyTransposed, factorise, type Qr } from './qr';
+
+/**
+ * Non-linear least squares: the x that makes |r(x)|² least.
+ *
+ * Levenberg–Marquardt as a trust region with scaled variables, by QR of the Jacobian (never of the
+ * normal equations, which would square its condition).
+ * Source: J. J. Moré, "The Levenberg–Marquardt algorithm: implementation and theory", Lecture
+ * Notes in Mathematics 630, Springer 1978, pp. 105–116.
+ */
+export interface Evaluation {
+  /** m residuals, each divided by its standard uncertainty where that is known. */
+  readonly residuals: Float64Array;
+  /** ∂r/∂step at no step, m × n, column-major; asked for only at accepted points. */
+  jacobian(): Float64Array;
+}
+
+export interface LeastSquaresProblem {
+  /** Length of a step; less than that of x when constraints tie its elements. */
+  readonly freedom: number;
+  evaluate(x: Float64Array): Evaluation;
+  /** x moved by a step; null when the point cannot be reached. Addition when left out. */
+  move?(x: Float64Array, step: Float64Array): Float64Array | null;
+}
+
+export interface LeastSquaresOptions {
+  readonly maxIterations?: number;
+  /** Relative decrease of |r|² that counts as none. */
+  readonly tolerance?: number;
+  /** False where the elements of a step are of like size and their meaning may turn. */
+  readonly scaling?: boolean;
+  /** First trust radius over the scaled length of x. */
+  readonly radius?: number;
+}
+
+export interface LeastSquaresResult {
+  readonly x: Float64Array;
+  readonly residuals: Float64Array;
+  readonly jacobian: Float64Array;
+  /** |r|² at x. */
+  readonly sumOfSquares: number;
+  readonly iterations: number;
+  readonly converged: boolean;
+}
+
+export function minimise(
+  problem: LeastSquaresProblem,
+  start: Float64Array,
+  options: LeastSquaresOptions = {},
+): LeastSquaresResult {
+  const { maxIterations = 500, tolerance = 1e-15, scaling = true, radius = 1 } = options;
+  const n = problem.freedom;
+  let x = start;
+  let current = problem.evaluate(x);
+  let norm = euclid(current.residuals);
+  let jacobian = current.jacobian();
+  const scale = new Float64Array(n).fill(1);
+  const size = (a: Float64Array): number => (scaling ? scaledNorm(scale, a) : euclid(a));
+  let trust = 0;
+  let damping = 0;
+  for (let iteration = 1; iteration <= maxIterations; iteration++) {
+    const m = current.residuals.length;
+    const qr = factorise(jacobian, m, n, 0);
+    if (scaling) rescale(scale, jacobian, m, iteration === 1);
+    if (iteration === 1) trust = radius * (size(x) || 1);
+    const projected = applyTransposed(qr, current.residuals);
+    const done = (converged: boolean): LeastSquaresResult => ({
+      x,
+      residuals: current.residuals,
+      jacobian,
+      sumOfSquares: norm * norm,
+      iterations: iteration,
+      converged,
+    });
+    if (n === 0 || gradientIsZero(qr, jacobian, current.residuals, norm)) return done(true);
+    for (;;) {
+      const { step, lambda } = trustRegionStep(qr, projected, scale, trust, damping);
+      damping = lambda;
+      const length = scaledNorm(scale, step);
+      if (iteration === 1) trust = Math.min(trust, length || trust);
+      const moved = problem.move ? problem.move(x, step) : sum(x, step);
+      const trial = moved === null ? null : problem.evaluate(moved);
+      const trialNorm = trial === null ? Infinity : euclid(trial.residuals);
+      const actual = trialNorm < 10 * norm ? 1 - (trialNorm / norm) ** 2 : -1;
+      const linear = linearNorm(qr, step) / norm;
+      const damped = (Math.sqrt(damping) * length) / norm;
+      const predicted = linear ** 2 + 2 * damped ** 2;
+      const slope = -(linear ** 2 + damped ** 2);
+      const ratio = predicted === 0 ? 0 : actual / predicted;
+      if (!(ratio > 0.25)) {
+        let shrink = actual >= 0 ? 0.5 : (0.5 * slope) / (slope + 0.5 * actual);
+        if (!(0.1 * trialNorm < norm) || !(shrink >= 0.1)) shrink = 0.1;
+        trust = shrink * Math.min(trust, length / 0.1);
+        damping /= shrink;
+      } else if (damping === 0 || ratio >= 0.75) {
+        trust = length / 0.5;
+        damping *= 0.5;
+      }
+      if (ratio >= 1e-4 && moved !== null && trial !== null) {
+        x = moved;
+        current = trial;
+        norm = trialNorm;
+        jacobian = current.jacobian();
+      }
+      const negligible = Math.abs(actual) <= tolerance && predicted <= tolerance && ratio <= 2;
+      if (negligible || trust <= Number.EPSILON * size(x)) return done(true);
+      if (ratio >= 1e-4) break;
+      if (predicted <= Number.EPSILON ** 2 || trust < 1e-300) return done(true);
+    }
+  }
+  return {
+    x,
+    residuals: current.residuals,
+    jacobian,
+    sumOfSquares: norm * norm,
+    iterations: maxIterations,
+    converged: false,
+  };
+}
+
+function rescale(scale: Float64Array, jacobian: Float64Array, m: number, first: boolean): void {
+  for (let j = 0; j < scale.length; j++) {
+    const norm = euclid(jacobian.subarray(j * m, (j + 1) * m));
+    if (first) scale[j] = norm || 1;
+    else scale[j] = Math.max(scale[j], norm);
+  }
+}
+
+/** Every column of the Jacobian is orthogonal to the residuals, to rounding. */
+function gradientIsZero(
+  qr: Qr,
+  jacobian: Float64Array,
+  residuals: Float64Array,
+  norm: number,
+): boolean {
+  if (norm === 0) return true;
+  const m = qr.rows;
+  for (let j = 0; j < qr.columns; j++) {
+    const column = jacobian.subarray(j * m, (j + 1) * m);
+    const length = euclid(column);
+    let dot = 0;
+    for (let i = 0; i < m; i++) dot += column[i] * residuals[i];
+    if (length > 0 && Math.abs(dot) > 4 * Number.EPSILON * length * norm) return false;
+  }
+  return true;
+}
+
+/** |J·step|. */
+function linearNorm(qr: Qr, step: Float64Array): number {
+  const n = qr.columns;
+  let sum = 0;
+  for (let k = 0; k < Math.min(n, qr.rows); k++) {
+    let row = 0;
+    for (let j = k; j < n; j++) row += qr.factors[j * qr.rows + k] * step[qr.pivots[j]];
+    sum += row * row;
+  }
+  return Math.sqrt(sum);
+}
+
+/**
+ * The λ ≥ 0 and step that solve min |J·s + r|² + λ|D·s|² with |D·s| within a tenth of the trust
+ * radius, or λ = 0 when the full step is inside: Moré's safeguarded Newton iteration on
+ * φ(λ) = |D·s(λ)| − Δ.
+ */
+function trustRegionStep(
+  qr: Qr,
+  projected: Float64Array,
+  scale: Float64Array,
+  trust: number,
+  previous: number,
+): { step: Float64Array; lambda: number } {
+  const n = qr.columns;
+  const full = dampedStep(qr, projected, scale, 0);
+  let phi = full === null ? Infinity : scaledNorm(scale, full.step) - trust;
+  if (full !== null && phi <= 0.1 * trust) return { step: full.step, lambda: 0 };
+  let lower = full === null ? 0 : Math.max(0, phi / trust / full.slope);
+  let upper = gradientNorm(qr, projected, scale) / trust || Number.MIN_VALUE;
+  let lambda = Math.min(Math.max(previous, lower), upper);
+  if (lambda === 0) lambda = upper * 1e-3;
+  let best: Float64Array = new Float64Array(n);
+  for (let i = 0; i < 20; i++) {
+    const damped = dampedStep(qr, projected, scale, Math.max(lambda, 1e-300));
+    if (damped === null) break;
+    best = damped.step;
+    const before = phi;
+    phi = scaledNorm(scale, best) - trust;
+    if (Math.abs(phi) <= 0.1 * trust || (lower === 0 && phi <= before && before < 0)) break;
+    if (phi > 0) lower = Math.max(lower, lambda);
+    else upper = Math.min(upper, lambda);
+    lambda = Math.max(lower, lambda + phi / trust / damped.slope);
+    if (lambda > upper) lambda = Math.sqrt(Math.max(lower, upper * 1e-3) * upper);
+  }
+  return { step: best, lambda };
+}
+
+/** The step at λ, and −φ′(λ)/|D·s|, both from the triangle of [R; √λ·D·P]. */
+function dampedStep(
+  qr: Qr,
+  projected: Float64Array,
+  scale: Float64Array,
+  lambda: number,
+): { step: Float64Array; slope: number } | null {
+  const n = qr.columns;
+  const kept = Math.min(n, qr.rows);
+  const root = Math.sqrt(lambda);
+  const rows = kept + (lambda > 0 ? n : 0);
+  const a = new Float64Array(rows * n);
+  const b = new Float64Array(rows);
+  for (let j = 0; j < n; j++) {
+    for (let k = 0; k <= Math.min(j, kept - 1); k++) a[j * rows + k] = qr.factors[j * qr.rows + k];
+    if (lambda > 0) a[j * rows + kept + j] = root * scale[qr.pivots[j]];
+  }
+  for (let k = 0; k < kept; k++) b[k] = -projected[k];
+  const triangle = factorise(a, rows, n, Number.EPSILON * 8);
+  if (triangle.rank < n) return null;
+  const y = applyTransposed(triangle, b);
+  const inner = backSubstitute(triangle, y);
+  const step = new Float64Array(n);
+  for (let j = 0; j < n; j++) step[qr.pivots[triangle.pivots[j]]] = inner[j];
+  const length = scaledNorm(scale, step);
+  if (length === 0) return { step, slope: 1 };
+  const w = new Float64Array(n);
+  for (let j = 0; j < n; j++) {
+    const p = qr.pivots[triangle.pivots[j]];
+    w[j] = (scale[p] * scale[p] * step[p]) / length;
+  }
+  forwardSubstitute(triangle, w);
+  const slope = w.reduce((total, value) => total + value * value, 0);
+  return { step, slope };
+}
+
+function backSubstitute(qr: Qr, y: Float64Array): Float64Array {
+  const n = qr.columns;
+  const x = new Float64Array(n);
+  for (let k = n - 1; k >= 0; k--) {
+    let sum = y[k];
+    for (let j = k + 1; j < n; j++) sum -= qr.factors[j * qr.rows + k] * x[j];
+    x[k] = sum / qr.factors[k * qr.rows + k];
+  }
+  return x;
+}
+
+/** Solves Rᵀ·x = w in place. */
+function forwardSubstitute(qr: Qr, w: Float64Array): void {
+  for (let k = 0; k < qr.columns; k++) {
+    let sum = w[k];
+    for (let j = 0; j < k; j++) sum -= qr.factors[k * qr.rows + j] * w[j];
+    w[k] = sum / qr.factors[k * qr.rows + k];
+  }
+}
+
+/** |D⁻¹·Jᵀ·r|. */
+function gradientNorm(qr: Qr, projected: Float64Array, scale: Float64Array): number {
+  let total = 0;
+  for (let j = 0; j < qr.columns; j++) {
+    let sum = 0;
+    for (let k = 0; k <= Math.min(j, qr.rows - 1); k++)
+      sum += qr.factors[j * qr.rows + k] * projected[k];
+    total += (sum / scale[qr.pivots[j]]) ** 2;
+  }
+  return Math.sqrt(total);
+}
+
+function euclid(a: Float64Array): number {
+  let sum = 0;
+  for (const value of a) sum += value * value;
+  return Math.sqrt(sum);
+}
+
+function scaledNorm(scale: Float64Array, a: Float64Array): number {
+  let sum = 0;
+  for (let i = 0; i < scale.length; i++) sum += (scale[i] * a[i]) ** 2;
+  return Math.sqrt(sum);
+}
+
+function sum(x: Float64Array, step: Float64Array): Float64Array {
+  return x.map((value, i) => value + step[i]);
+}
