@@ -25,7 +25,8 @@ export function securityHeaders(secure: boolean): RequestHandler[] {
           'connect-src': ["'self'"],
           'worker-src': ["'self'"],
           'form-action': ["'self'"],
-          'base-uri': ["'none'"],
+          // The page names its base so that deep addresses find the scripts; no other base may be set.
+          'base-uri': ["'self'"],
           'object-src': ["'none'"],
           'frame-ancestors': ["'none'"],
           'require-trusted-types-for': ["'script'"],
