@@ -7,10 +7,11 @@ import { brotliCompressSync, constants } from 'node:zlib';
 import { Advice, root, runScript, say } from './prepare.mjs';
 
 /** Entries of their own: the server, and each worker thread that it starts. */
-const serverEntries = [
+const serverEntries = () => [
   'server/main.ts',
-  'server/motion/compute-worker.ts',
-  'server/exhibits/metadata-worker.ts',
+  ...readdirSync(join(root, 'server'), { recursive: true })
+    .filter((path) => path.endsWith('-worker.ts'))
+    .map((path) => `server/${path}`),
 ];
 
 /** Builds unless the sources are the ones of the last build. */
@@ -39,7 +40,7 @@ async function buildServer() {
   const { build: bundle } = await import('esbuild');
   await bundle({
     absWorkingDir: root,
-    entryPoints: serverEntries,
+    entryPoints: serverEntries(),
     outdir: 'dist/server',
     outbase: 'server',
     bundle: true,
