@@ -128,6 +128,7 @@ export default tseslint.config(
   },
   {
     files: ['shared/**/*.ts'],
+    ignores: ['**/*.spec.ts'],
     rules: { 'no-restricted-imports': closed(noApplication, noServer, noNode) },
   },
   {
