@@ -1,0 +1,1 @@
+export function bundleTools(outDir: string): Promise<void>;

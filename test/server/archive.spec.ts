@@ -1,0 +1,365 @@
+import { execFile } from 'node:child_process';
+import { access, cp, mkdtemp, readFile, readdir, rm, stat, writeFile } from 'node:fs/promises';
+import { tmpdir } from 'node:os';
+import { join } from 'node:path';
+import { Readable } from 'node:stream';
+import { promisify } from 'node:util';
+import { afterAll, beforeAll, describe, expect, it } from '@jest/globals';
+import type { ArchiveSource } from '#server/archive/archive-source';
+import { buildArchive } from '#server/archive/build-archive';
+import { verifyBag } from '#server/archive/tools/verify-bag';
+import { archiveFixture } from '../fixtures/archive';
+import { bundleTools } from '../../scripts/bundle-tools.mjs';
+
+const run = promisify(execFile);
+const packages: Record<string, string> = {
+  '7z': 'p7zip-full',
+  sh: 'dash',
+  openssl: 'openssl',
+  python3: 'python3',
+  sha256sum: 'coreutils',
+  sha512sum: 'coreutils',
+  unzip: 'unzip',
+};
+
+interface Outcome {
+  readonly code: number;
+  readonly output: string;
+}
+
+/** Runs a program in an empty environment; one that is missing fails the test and says what to install. */
+async function ordinary(program: string, args: string[], cwd: string): Promise<Outcome> {
+  try {
+    const { stdout, stderr } = await run(program, args, { cwd, env: { PATH: '/usr/bin:/bin' } });
+    return { code: 0, output: stdout + stderr };
+  } catch (error) {
+    const failed = error as { code?: unknown; stdout?: string; stderr?: string };
+    if (failed.code === 'ENOENT') {
+      throw new Error(`"${program}" is not here. Install Debian's package ${packages[program]}.`);
+    }
+    return { code: Number(failed.code), output: `${failed.stdout}${failed.stderr}` };
+  }
+}
+
+const node = (args: string[], cwd: string) => ordinary(process.execPath, args, cwd);
+
+let folder: string;
+let source: ArchiveSource;
+let zip: string;
+let bag: string;
+
+beforeAll(async () => {
+  folder = await mkdtemp(join(tmpdir(), 'centrode-archive-'));
+  await bundleTools(join(folder, 'tools'));
+  const tool = (name: string) => readFile(join(folder, 'tools', `${name}.mjs`), 'utf8');
+  source = archiveFixture({
+    tools: { verify: await tool('verify'), recompute: await tool('recompute') },
+  });
+  zip = join(folder, 'release.zip');
+  await buildArchive(source, zip);
+  await ordinary('unzip', ['-q', zip], folder);
+  bag = join(folder, '2026-014-release-2');
+}, 60_000);
+
+afterAll(() => rm(folder, { recursive: true, force: true }));
+
+describe('a released archive, checked with ordinary tools', () => {
+  it('is a sound ZIP for unzip and for 7z', async () => {
+    expect(await ordinary('unzip', ['-t', zip], folder)).toMatchObject({
+      code: 0,
+      output: expect.stringContaining('No errors detected'),
+    });
+    expect(await ordinary('7z', ['t', zip], folder)).toMatchObject({
+      code: 0,
+      output: expect.stringContaining('Everything is Ok'),
+    });
+  });
+
+  it.each([
+    ['sha256sum', 'manifest-sha256.txt'],
+    ['sha256sum', 'tagmanifest-sha256.txt'],
+    ['sha512sum', 'manifest-sha512.txt'],
+    ['sha512sum', 'tagmanifest-sha512.txt'],
+  ])('satisfies %s -c %s', async (program, manifest) => {
+    expect(await ordinary(program, ['--strict', '-c', manifest], bag)).toMatchObject({ code: 0 });
+  });
+
+  it('is a valid bag for a verifier that shares nothing with it', async () => {
+    const verifier = join(process.cwd(), 'test/verify_bag.py');
+    const { code, output } = await ordinary('python3', ['-I', verifier, bag], folder);
+    expect([code, output]).toEqual([0, 'The bag is valid.\n']);
+  });
+
+  it('carries a signature that openssl accepts, and only for these bytes', async () => {
+    const custody = join(bag, 'data/custody');
+    const check = (file: string) =>
+      ordinary(
+        'openssl',
+        ['pkeyutl', '-verify', '-pubin', '-inkey', 'public-key.pem', '-rawin', '-in', file].concat(
+          '-sigfile',
+          'head.sig',
+        ),
+        custody,
+      );
+    expect((await check('head-signed-bytes.json')).code).toBe(0);
+    expect((await check('head.json')).code).not.toBe(0);
+  });
+
+  it('verifies itself with its own verify.mjs on plain Node.js', async () => {
+    const { code, output } = await node(['data/tools/verify.mjs', '.'], bag);
+    expect(output).toContain('The archive is whole');
+    expect(output).not.toContain('WRONG');
+    expect(code).toBe(0);
+  });
+
+  it('unpacks into one folder named like the release, with nothing beside it', async () => {
+    const { output } = await ordinary('unzip', ['-Z1', zip], folder);
+    const names = output.trim().split('\n');
+    expect(names.every((name) => name.startsWith('2026-014-release-2/'))).toBe(true);
+    expect(names.every((name) => /^[\x21-\x7e]+$/.test(name))).toBe(true);
+    expect(names).toContain('2026-014-release-2/data/index.html');
+  });
+});
+
+describe('what the archive holds', () => {
+  const read = (path: string) => readFile(join(bag, 'data', path), 'utf8');
+
+  it('has released originals byte for byte, and their own names only in a table', async () => {
+    const names = await readdir(join(bag, 'data/exhibits/2026-014-1'));
+    expect(names.map((name) => name.replace(/-[0-9a-f]{12}/, ''))).toEqual([
+      '001.jpg',
+      '002.txt',
+      '003.bin',
+    ]);
+    const table = await read('exhibits/files.csv');
+    expect(table).toContain('Straße 100% naß.JPG');
+    expect(table).toContain(",'=cmd|x.txt,");
+  });
+
+  it('names what was withheld, with the reason, and tells nothing else of it', async () => {
+    expect(await read('withheld.csv')).toBe(
+      "exhibit,reason,explanation\r\n2026-014/3,privileged,'-1 letter to counsel\r\n",
+    );
+    for (const path of ['custody/ledger.jsonl', 'custody/ledger.csv', 'index.html']) {
+      expect(await read(path)).not.toContain('a secret');
+    }
+    expect(await readdir(join(bag, 'data/exhibits'))).not.toContain('2026-014-3');
+  });
+
+  it('keeps numbers numbers and neutralises what a spreadsheet would run', async () => {
+    const marks = await read('survey/marks.csv');
+    expect(marks).toContain("\r\n'=G1,gouge,9.3,-2.25,0.02,0.03,0.0001,,");
+    expect(marks).toContain(`"'@SUM(A1:A9) ""deep"", 12 mm"`);
+    expect(await read('custody/ledger.csv')).toContain(`"'=1+1, ""quoted""\nsecond line"`);
+  });
+
+  it('gives every velocity and acceleration with its 95 % interval', async () => {
+    const rows = (await read('velocities.csv')).split('\r\n');
+    const of = (name: string) => rows.find((row) => row.includes(`,arm,tip,${name},`))?.split(',');
+    // By hand: omega = 3 ± 0.5 rad/s at 2 m: v = 6 ± 1 m/s, a = 18 ± 6 m/s²; 95 % is ± 1.960 sigma.
+    expect(of('speed')?.slice(7)).toEqual([
+      'm/s',
+      '6',
+      '1',
+      expect.any(String),
+      expect.any(String),
+    ]);
+    expect(Number(of('speed')?.[10])).toBeCloseTo(6 - 1.96, 3);
+    expect(Number(of('acceleration')?.[9])).toBeCloseTo(6, 12);
+    expect(Number(of('acceleration')?.[11])).toBeCloseTo(18 + 11.76, 3);
+    expect(rows[0]).toContain('computation,reconstruction,station');
+  });
+
+  it('has a reader that needs no network, no script and no other file', async () => {
+    const page = await read('index.html');
+    expect(page).toContain(`default-src 'none'`);
+    expect(page).not.toMatch(
+      /<script|<link|<iframe|@import|url\((?!data:)|src=|https?:(?!\/\/www\.w3\.org\/2000\/svg")/,
+    );
+    expect(page).toContain('Spin on Marl Lane &lt;bend&gt;');
+    expect(page).toContain('&lt;script&gt;');
+    for (const [, path] of page.matchAll(/href="(?!#)([^"]+)"/g)) {
+      await access(join(bag, 'data', decodeURI(path)));
+    }
+  });
+
+  it('draws the plan to scale', async () => {
+    const plan = await read('survey/plan.svg');
+    expect(plan).toContain('width="420mm" height="297mm" viewBox="0 0 420 297"');
+    expect(plan).toContain('Scale 1:100 on A3');
+    // 31.5 m at 1:100 are 315 mm between the first mark and the point of rest.
+    const at = [...plan.matchAll(/translate\(([\d.]+) ([\d.]+)\)/g)].map(([, x, y]) => [+x, +y]);
+    expect(at[4][0] - at[0][0]).toBeCloseTo(315, 1);
+    expect(at[0][1] - at[4][1]).toBeCloseTo(67.5, 1);
+  });
+});
+
+describe('building', () => {
+  it('gives identical bytes twice', async () => {
+    const again = join(folder, 'again.zip');
+    const { sha256, size } = await buildArchive(source, again);
+    expect((await readFile(again)).equals(await readFile(zip))).toBe(true);
+    expect(size).toBe((await stat(zip)).size);
+    expect((await ordinary('sha256sum', [again], folder)).output).toContain(sha256);
+  });
+
+  it.each([
+    ['another file', (bytes: Buffer) => Buffer.concat([bytes.subarray(1), Buffer.from('x')])],
+    ['a short file', (bytes: Buffer) => bytes.subarray(0, -1)],
+    ['a long file', (bytes: Buffer) => Buffer.concat([bytes, Buffer.from('x')])],
+  ])('refuses %s in the store and leaves nothing behind', async (_, spoil) => {
+    const target = join(folder, 'spoilt.zip');
+    const spoilt: ArchiveSource = {
+      ...source,
+      openFile: (sha256) =>
+        Readable.from(source.openFile(sha256).map((bytes: Buffer) => spoil(bytes))),
+    };
+    await expect(buildArchive(spoilt, target)).rejects.toThrow(/001-[0-9a-f]{12}\.jpg/);
+    expect((await readdir(folder)).filter((name) => name.startsWith('spoilt'))).toEqual([]);
+  });
+
+  it('passes on the error of a file that cannot be read', async () => {
+    const broken: ArchiveSource = {
+      ...source,
+      openFile: () =>
+        new Readable({
+          read() {
+            this.destroy(new Error('the disk is gone'));
+          },
+        }),
+    };
+    await expect(buildArchive(broken, join(folder, 'broken.zip'))).rejects.toThrow('disk is gone');
+  });
+
+  it('refuses a computation that was changed', async () => {
+    const changed = {
+      ...source,
+      computations: source.computations.map(({ hash, text }) => ({ hash, text: `${text} ` })),
+    };
+    await expect(buildArchive(changed, join(folder, 'changed.zip'))).rejects.toThrow('was changed');
+  });
+
+  it('can be stopped', async () => {
+    const stop = AbortSignal.abort(new Error('stopped'));
+    await expect(
+      buildArchive(source, join(folder, 'stopped.zip'), { signal: stop }),
+    ).rejects.toThrow('stopped');
+  });
+});
+
+/** Small seeded generator (mulberry32), for places to spoil. */
+function seeded(seed: number): () => number {
+  return () => {
+    seed = (seed + 0x6d2b79f5) | 0;
+    let t = Math.imul(seed ^ (seed >>> 15), 1 | seed);
+    t = (t + Math.imul(t ^ (t >>> 7), 61 | t)) ^ t;
+    return ((t ^ (t >>> 14)) >>> 0) / 2 ** 32;
+  };
+}
+
+describe('one flipped bit', () => {
+  it('is found by the archive’s verifier and by the independent one, wherever it is', async () => {
+    const copy = join(folder, 'copy');
+    await cp(bag, copy, { recursive: true });
+    const verifier = join(process.cwd(), 'test/verify_bag.py');
+    const random = seeded(20261201);
+    const all = (await readdir(copy, { recursive: true, withFileTypes: true }))
+      .filter((entry) => entry.isFile())
+      .map((entry) => join(entry.parentPath, entry.name));
+    const sizes = await Promise.all(all.map(async (path) => (await stat(path)).size));
+    const paths = all.filter((_, i) => sizes[i] > 0).sort();
+    const missed: string[] = [];
+    // Every file once, then files at random: 60 places in all.
+    for (let i = 0; i < 60; i++) {
+      const path = i < paths.length ? paths[i] : paths[Math.floor(random() * paths.length)];
+      const good = await readFile(path);
+      const place = Math.floor(random() * good.length);
+      const bit = Math.floor(random() * 8);
+      const spoilt = Buffer.from(good);
+      spoilt[place] ^= 1 << bit;
+      await writeFile(path, spoilt);
+      const { findings } = await verifyBag(copy);
+      if (findings.length === 0) missed.push(`verify.mjs: ${path} byte ${place} bit ${bit}`);
+      // RFC 8493 lets hashes stand in either case, so there a case bit says nothing to it.
+      const sameHash = bit === 5 && /manifest-sha/.test(path);
+      if (!sameHash && i % 3 === 0) {
+        const { code } = await ordinary('python3', ['-I', verifier, copy], folder);
+        if (code === 0) missed.push(`verify_bag.py: ${path} byte ${place} bit ${bit}`);
+      }
+      await writeFile(path, good);
+    }
+    expect(missed).toEqual([]);
+    expect((await verifyBag(copy)).findings).toEqual([]);
+  }, 120_000);
+});
+
+describe('a bag made anew around a change, with manifests that fit', () => {
+  /** Changes one file and then makes all four manifests and the Oxum again, as a forger would. */
+  async function forge(name: string, path: string, change: (content: string) => string) {
+    const copy = join(folder, name);
+    await cp(bag, copy, { recursive: true });
+    const file = join(copy, path);
+    await writeFile(file, change(await readFile(file, 'latin1')), 'latin1');
+    const shell = `
+      octets=$(find data -type f -printf '%s\\n' | awk '{ s += $1 } END { print s }')
+      sed -i "s/^Payload-Oxum: .*/Payload-Oxum: $octets.$(find data -type f | wc -l)/" bag-info.txt
+      for a in sha256 sha512; do find data -type f -exec "\${a}sum" {} + > manifest-$a.txt; done
+      for a in sha256 sha512; do
+        "\${a}sum" bagit.txt bag-info.txt manifest-sha256.txt manifest-sha512.txt > tagmanifest-$a.txt
+      done`;
+    const { code, output } = await ordinary('sh', ['-ec', shell], copy);
+    expect([code, output]).toEqual([0, '']);
+    return (await verifyBag(copy)).findings.map((finding) => `${finding.where} ${finding.message}`);
+  }
+
+  it('passes when nothing was changed', async () => {
+    expect(await forge('same', 'data/README.txt', (text) => text)).toEqual([]);
+  });
+
+  it('is found out by the ledger when an exhibit was changed', async () => {
+    const path = source.snapshot.exhibits[0].files[0].sha256.slice(0, 12);
+    const found = await forge('exhibit', `data/exhibits/2026-014-1/001-${path}.jpg`, (bytes) =>
+      bytes.replace(/^./, (first) => (first === 'x' ? 'y' : 'x')),
+    );
+    expect(found).toEqual([expect.stringMatching(/001-.*is not the file of the release/)]);
+  });
+
+  it('is found out when a number in the tables was changed', async () => {
+    const found = await forge('table', 'data/velocities.csv', (text) =>
+      text.replace(',speed,m/s,6,', ',speed,m/s,5,'),
+    );
+    expect(found).toEqual([expect.stringContaining('velocities.csv')]);
+  });
+
+  it.each([
+    ['changed', (lines: string[]) => lines.map((line) => line.replace('Noor Ekdal', 'Ira Vost'))],
+    ['removed', (lines: string[]) => lines.filter((_, i) => i !== 1)],
+    ['cut off', (lines: string[]) => lines.slice(0, -1)],
+    ['put in', (lines: string[]) => [...lines, lines[0]]],
+    ['moved', (lines: string[]) => [lines[1], lines[0], ...lines.slice(2)]],
+  ])('is found out when an event of the ledger was %s', async (name, change) => {
+    const found = await forge(name, 'data/custody/ledger.jsonl', (text) =>
+      change(text.trimEnd().split('\n'))
+        .map((line) => `${line}\n`)
+        .join(''),
+    );
+    expect(found.join('\n')).toMatch(/custody|release/);
+  });
+
+  it('is found out when an event is passed off as withheld', async () => {
+    const found = await forge('passed-off', 'data/custody/ledger.jsonl', (text) => {
+      const lines = text.trimEnd().split('\n');
+      const { hash } = source.ledger[1];
+      lines[1] = `{"exhibit":"2026-014/1","format":"centrode.custody-event-withheld/1","hash":"${hash}","sequence":2}`;
+      return `${lines.join('\n')}\n`;
+    });
+    expect(found.join('\n')).toContain('does not say why 2026-014/1 was withheld');
+  });
+
+  it('is found out when the release is another', async () => {
+    const found = await forge('release', 'data/release.json', (text) =>
+      text.replace('The grip of the road.', 'Nothing of weight.'),
+    );
+    expect(found.join('\n')).toContain("is not what the ledger's last event released");
+  });
+});
