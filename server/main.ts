@@ -1,12 +1,13 @@
 import { readConfig } from './config';
-import { loadDemo } from './database/seeders/demo';
+import { isEmpty, loadDemo } from './database/seeders/demo';
 import { createServices, listen, prepareDatabase } from './start';
 
 const config = readConfig(process.env);
 await prepareDatabase(config);
 const services = createServices(config);
-if (config.demo) await loadDemo(services);
+const loadTheDemo = config.demo && (await isEmpty());
 const running = await listen(services);
+if (loadTheDemo) await loadDemo(running);
 services.log.info({ address: running.address }, 'serving');
 // scripts/start.mjs waits for this line.
 process.stdout.write(`Centrode serves on ${running.address}\n`);

@@ -1,0 +1,272 @@
+import { join } from 'node:path';
+import {
+  addParty,
+  addQuestion,
+  assign,
+  moveStage,
+  openCase,
+  readCase,
+  type CaseFile,
+  type incidentKinds,
+} from '#shared/contracts/cases';
+import { answerHandOver, handOver } from '#shared/contracts/custody';
+import {
+  readExhibit,
+  registerExhibit,
+  type Exhibit,
+  type ExhibitFile,
+  type exhibitKinds,
+} from '#shared/contracts/exhibits';
+import { addReconstruction, recordComputation } from '#shared/contracts/motion';
+import {
+  importSurvey,
+  listMarks,
+  markKinds,
+  type Mark,
+  type SurveyMapping,
+} from '#shared/contracts/survey';
+import { CaseRecord } from '../models/case';
+import type { Colleagues } from './demo';
+import { releaseDemo } from './release-demo';
+import type { Scene } from './scene';
+import { reconstructionOf } from './scene-motion';
+
+type IncidentKind = (typeof incidentKinds)[number];
+
+/** Brings one sample scene in as a case: opened, assigned, logged, measured, solved. */
+export async function loadScene(
+  folder: string,
+  scene: Scene,
+  colleagues: Colleagues,
+): Promise<void> {
+  const file = await openSceneCase(scene, colleagues);
+  const caseId = file.id;
+  const leadName = scene.people.find((person) => person.role === 'lead-investigator')?.name ?? '';
+  const investigator = await colleagues.named(leadName);
+
+  const exhibits = new Map<number, Exhibit>();
+  const files = new Map<string, { exhibit: Exhibit; file: ExhibitFile }>();
+  for (const item of scene.exhibits) {
+    const exhibit = await investigator.call(registerExhibit, {
+      params: { caseId },
+      body: {
+        kind: item.kind
+          .replace('photograph-set', 'photographs')
+          .replace('-', ' ') as (typeof exhibitKinds)[number],
+        description: `${item.title}. ${item.description}`.slice(0, 1000),
+        source: item.source,
+        collectedBy: item.collectedBy,
+        collectedAt: utc(item.collectedAt),
+        collectedPlace: item.location,
+        condition: item.condition,
+        packaging: item.packaging ?? '',
+        sealNumber: item.seal ?? '',
+        sensitive: item.sensitivity === 'sensitive',
+        parentNumber: item.parent === null ? null : (exhibits.get(item.parent)?.number ?? null),
+      },
+    });
+    exhibits.set(item.number, exhibit);
+    for (const { path } of item.files) {
+      const taken = await investigator.upload(caseId, exhibit.id, join(folder, path));
+      files.set(path, { exhibit, file: taken });
+    }
+  }
+  await handOverAsToldIn(scene, colleagues, caseId, exhibits, leadName);
+
+  const survey = files.get(scene.survey.file);
+  if (!survey) throw new Error(`${scene.title}: the survey file is no exhibit`);
+  await investigator.call(importSurvey, {
+    params: { caseId },
+    body: {
+      exhibitId: survey.exhibit.id,
+      fileId: survey.file.id,
+      mapping: mappingOf(scene),
+      strict: true,
+    },
+  });
+  const { items: marks } = await investigator.call(listMarks, { params: { caseId } });
+  const hashes = await solve(scene, colleagues, leadName, caseId, marks);
+  const current = await investigator.call(readCase, { params: { caseId } });
+  await investigator.call(moveStage, {
+    params: { caseId },
+    body: { stage: 'in-examination', reason: 'Survey and exhibits are in.' },
+    ifMatch: current.version,
+  });
+  if (scene.kind === 'road' && scene.reconstruction.bodies.length === 1) {
+    await releaseDemo(scene, colleagues, leadName, caseId, hashes);
+  }
+}
+
+async function openSceneCase(scene: Scene, colleagues: Colleagues): Promise<CaseFile> {
+  const lead = await colleagues.named('M. Quellen');
+  const kind: IncidentKind =
+    scene.kind === 'machine'
+      ? 'machine, linkage'
+      : scene.reconstruction.bodies.length > 1
+        ? 'road, articulated'
+        : 'road, one vehicle';
+  const opened = await lead.call(openCase, {
+    body: {
+      title: scene.title,
+      kind,
+      commissionedBy: scene.brief.instructedBy,
+      incidentOn: scene.incidentAt.slice(0, 10),
+      place: scene.place.name,
+      circumstances: scene.brief.background,
+      dueOn: scene.brief.dueAt.slice(0, 10),
+      speedUnit: scene.kind === 'machine' ? 'm/s' : 'km/h',
+      xAxisBearing: scene.bearingOfX === null ? null : (scene.bearingOfX * Math.PI) / 180,
+    },
+  });
+  const caseId = opened.id;
+  // The samples' papers and placards bear these numbers.
+  await CaseRecord.update({ number: scene.number }, { where: { id: caseId } });
+  for (const question of scene.brief.questions) {
+    await lead.call(addQuestion, { params: { caseId }, body: { text: question.text } });
+  }
+  for (const person of scene.people) {
+    await lead.call(assign, {
+      params: { caseId },
+      body: {
+        accountId: colleagues.idOf(person.name),
+        role: person.role,
+        declaration: { conflict: false, statement: 'No connection with any party or witness.' },
+      },
+    });
+  }
+  for (const party of scene.parties) {
+    const added = await lead.call(addParty, {
+      params: { caseId },
+      body: { name: party.name, role: party.role },
+    });
+    await lead.call(assign, {
+      params: { caseId },
+      body: {
+        accountId: colleagues.idOf(party.attorney),
+        role: 'attorney',
+        partyId: added.id,
+        declaration: { conflict: false, statement: `Acts for ${party.name}.` },
+      },
+    });
+  }
+  return lead.call(readCase, { params: { caseId } });
+}
+
+/** Hand-overs of the sample, from whoever holds the item to the next, each accepted. */
+async function handOverAsToldIn(
+  scene: Scene,
+  colleagues: Colleagues,
+  caseId: string,
+  exhibits: Map<number, Exhibit>,
+  firstHolder: string,
+): Promise<void> {
+  const holder = new Map<number, string>();
+  for (const entry of scene.custody) {
+    const exhibit = exhibits.get(entry.exhibit);
+    const from = holder.get(entry.exhibit) ?? firstHolder;
+    if (entry.kind !== 'handed-over' || !exhibit || entry.to === null || entry.to === from)
+      continue;
+    if (!scene.people.some((person) => person.name === entry.to)) continue;
+    const params = { caseId, exhibitId: exhibit.id };
+    const giver = await colleagues.named(from);
+    const receiver = await colleagues.named(entry.to);
+    const offered = await giver.call(handOver, {
+      params,
+      body: {
+        toId: colleagues.idOf(entry.to),
+        purpose: entry.purpose,
+        location: entry.location,
+        sealNumber: entry.sealAfter ?? '',
+        happenedAt: utc(entry.at),
+      },
+    });
+    await receiver.call(answerHandOver, {
+      params,
+      body: {
+        sequence: offered.event.sequence,
+        answer: 'accepted',
+        password: colleagues.password,
+        condition: 'Packaging whole, seal as stated.',
+        sealNumber: entry.sealAfter ?? '',
+        location: entry.location,
+      },
+    });
+    holder.set(entry.exhibit, entry.to);
+    await receiver.call(readExhibit, { params });
+  }
+}
+
+/** Records a computation for every station; returns their hashes by station. */
+async function solve(
+  scene: Scene,
+  colleagues: Colleagues,
+  leadName: string,
+  caseId: string,
+  marks: readonly Mark[],
+): Promise<Map<string, string>> {
+  const investigator = await colleagues.named(leadName);
+  const document = reconstructionOf(scene, marks);
+  const reconstruction = await investigator.call(addReconstruction, {
+    params: { caseId },
+    body: {
+      name: scene.reconstruction.title.slice(0, 120),
+      assumption: scene.reconstruction.alternatives[0]?.assumption ?? '',
+      document,
+    },
+  });
+  const hashes = new Map<string, string>();
+  for (const station of document.stations) {
+    const recorded = await investigator.call(recordComputation, {
+      params: { caseId, reconstructionId: reconstruction.id },
+      body: { stationId: station.id, version: reconstruction.version },
+    });
+    hashes.set(station.id, recorded.hash);
+  }
+  return hashes;
+}
+
+function mappingOf(scene: Scene): SurveyMapping {
+  const { columns, codes, delimiter, lengthUnit, sigmaUnit } = scene.survey;
+  const kinds = Object.entries(codes).map(([code, meaning]) => {
+    const kind = markKinds.find((known) => meaning.toLowerCase().startsWith(known));
+    return [code, kind ?? 'other'] as const;
+  });
+  return {
+    delimiter,
+    decimal: '.',
+    unit: lengthUnit,
+    sigmaUnit,
+    label: columns.id,
+    x: columns.x,
+    y: columns.y,
+    height: columns.height,
+    sigmaX: columns.sigmaX,
+    sigmaY: columns.sigmaY,
+    sigma: null,
+    code: columns.code,
+    trace: columns.string,
+    order: columns.sequence,
+    note: columns.remark,
+    kinds: Object.fromEntries(kinds),
+  };
+}
+
+/** A case that waits for the lead to assign it. */
+export async function openUnassigned(colleagues: Colleagues): Promise<void> {
+  const lead = await colleagues.named('M. Quellen');
+  const opened = await lead.call(openCase, {
+    body: {
+      title: 'Junction of Mere and Coil Road',
+      kind: 'road, two vehicles',
+      commissionedBy: 'An invented insurer',
+      place: 'Junction of Mere Road and Coil Road',
+      dueOn: '2027-01-12',
+    },
+  });
+  await CaseRecord.update({ number: '2026-016' }, { where: { id: opened.id } });
+}
+
+/** A time with an offset, as the API takes it. */
+function utc(time: string): string {
+  return new Date(time).toISOString();
+}
