@@ -29,13 +29,13 @@ await runScript(async () => {
   const folder = mkdtempSync(join(tmpdir(), 'centrode-suite-'));
   const database = await startMariadb({ folder: join(folder, 'mariadb'), durable: false });
   try {
-    check('types', 'node_modules/typescript/bin/tsc', ['-p', 'tsconfig.shared.json']);
-    check('types of the server', 'node_modules/typescript/bin/tsc', ['-p', 'tsconfig.server.json']);
-    check('types of the web specs', 'node_modules/typescript/bin/tsc', [
-      '-p',
-      'tsconfig.spec.json',
-      '--noEmit',
-    ]);
+    for (const part of ['shared', 'server', 'spec', 'e2e']) {
+      check(`types, ${part}`, 'node_modules/typescript/bin/tsc', [
+        '-p',
+        `tsconfig.${part}.json`,
+        '--noEmit',
+      ]);
+    }
     check('lint', 'node_modules/eslint/bin/eslint.js', ['.', '--max-warnings=0']);
     check('format', 'node_modules/prettier/bin/prettier.cjs', [
       '--check',
