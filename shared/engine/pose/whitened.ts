@@ -1,0 +1,71 @@
+import type { Observation, Row } from './equations';
+
+/**
+ * Observations divided by their uncertainty: residuals with unit covariance, so that their sum of
+ * squares is χ².
+ */
+export function whitened(
+  observations: readonly Observation[],
+  x: Float64Array,
+  weights: readonly number[],
+): { residuals: Float64Array; jacobian: () => Float64Array } {
+  const evaluated = observations.map((observation) => observation.evaluate(x));
+  const total = evaluated.reduce((sum, rows) => sum + rows.length, 0);
+  const residuals = new Float64Array(total);
+  let at = 0;
+  observations.forEach((observation, k) => {
+    const root = Math.sqrt(weights[k]);
+    for (const value of whiten(observation, evaluated[k])) residuals[at++] = root * value;
+  });
+  return {
+    residuals,
+    jacobian: () => {
+      const jacobian = new Float64Array(total * x.length);
+      let row = 0;
+      observations.forEach((observation, k) => {
+        const root = Math.sqrt(weights[k]);
+        for (const coefficients of observation.whitening) {
+          coefficients.forEach((coefficient, j) => {
+            const { gradient } = evaluated[k][j];
+            for (let c = 0; c < x.length; c++)
+              jacobian[c * total + row] += root * coefficient * gradient[c];
+          });
+          row++;
+        }
+      });
+      return jacobian;
+    },
+  };
+}
+
+export const whitenedJacobian = (
+  observations: readonly Observation[],
+  x: Float64Array,
+  weights: readonly number[],
+): Float64Array => whitened(observations, x, weights).jacobian();
+
+/** Residuals of one observation, with unit covariance. */
+export const whiten = (observation: Observation, rows: readonly Row[]): readonly number[] =>
+  observation.whitening.map((coefficients) =>
+    coefficients.reduce((sum, coefficient, j) => sum + coefficient * rows[j].value, 0),
+  );
+
+/**
+ * Huber's bound for residual vectors of one, two and three components: each is passed by the same
+ * share (17.9 %) of good observations as k = 1.345 in one dimension, which keeps 95 % efficiency.
+ * k² is the 0.8214 quantile of χ² with that many degrees of freedom.
+ * Source: P. J. Huber, Robust Statistics, Wiley 1981 (k = 1.345 from memory).
+ */
+const bounds = [1.345, 1.8559, 2.2167];
+
+/** min(1, k/|u|) of each mark; priors keep weight 1, since a joint is not a blunder. */
+export const observationWeights = (
+  observations: readonly Observation[],
+  x: Float64Array,
+): readonly number[] =>
+  observations.map((observation) => {
+    if (observation.kind !== 'mark') return 1;
+    const size = Math.hypot(...whiten(observation, observation.evaluate(x)));
+    const bound = bounds[observation.whitening.length - 1];
+    return size > bound ? bound / size : 1;
+  });
