@@ -160,6 +160,7 @@ export default tseslint.config(
     // Specs compare with stated values and reach into fixtures.
     files: ['**/*.spec.ts', 'test/**/*.ts', 'server/testing/**/*.ts'],
     rules: {
+      '@angular-eslint/prefer-on-push-component-change-detection': 'off',
       '@typescript-eslint/no-unsafe-assignment': 'off',
       '@typescript-eslint/no-unsafe-member-access': 'off',
       '@typescript-eslint/no-unsafe-argument': 'off',

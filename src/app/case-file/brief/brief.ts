@@ -1,22 +1,46 @@
-import { ChangeDetectionStrategy, Component } from '@angular/core';
+import {
+  ChangeDetectionStrategy,
+  Component,
+  computed,
+  inject,
+  signal,
+  viewChild,
+} from '@angular/core';
+import { MatButton } from '@angular/material/button';
+import type { HoldsWork } from '../../core/unsaved-work';
+import { showDay } from '../../ui/dates/dates';
 import { EmptyState } from '../../ui/empty-state/empty-state';
+import { Icon } from '../../ui/icon/icon';
+import { CurrentCase } from '../current-case';
+import { BriefForm } from './brief-form';
+import { briefFields } from './brief-fields';
+import { Parties } from './parties';
+import { People } from './people';
+import { Questions } from './questions';
+import { StageMove } from './stage-move';
 
+/** Who asked what, what is to be answered, who is concerned, who works on it. */
 @Component({
   selector: 'app-brief',
-  imports: [EmptyState],
-  template: `
-    <h2>Brief</h2>
-    <ui-empty-state text="This section is not in this version yet."
-      >It will hold the questions, the parties and the people.</ui-empty-state
-    >
-  `,
-  styles: `
-    :host {
-      display: grid;
-      gap: 12px;
-      padding: var(--gutter);
-    }
-  `,
+  imports: [BriefForm, EmptyState, Icon, MatButton, Parties, People, Questions, StageMove],
+  templateUrl: './brief.html',
+  styleUrl: './brief.scss',
   changeDetection: ChangeDetectionStrategy.OnPush,
 })
-export class Brief {}
+export class Brief implements HoldsWork {
+  protected readonly current = inject(CurrentCase);
+  private readonly form = viewChild(BriefForm);
+
+  protected readonly editing = signal(false);
+  protected readonly facts = computed(() => {
+    const file = this.current.file();
+    return briefFields
+      .filter((field) => field.key !== 'title' && field.key !== 'circumstances')
+      .map((field) => ({ label: field.label, text: field.show(file) }));
+  });
+  protected readonly showDay = showDay;
+
+  hasUnsavedWork(): boolean {
+    return this.form()?.isChanged() ?? false;
+  }
+}

@@ -139,7 +139,9 @@ describe('the typed client', () => {
 
   it('when the session is over, then that is announced', async () => {
     let told = 0;
-    api.signedOut.subscribe(() => (told += 1));
+    api.signedOut.subscribe(() => {
+      told += 1;
+    });
     const answer = problemOf(api.call(readCase, { params: { caseId } }));
     http.expectOne(`/api/cases/${caseId}`).flush(null, { status: 401, statusText: '' });
     await answer;

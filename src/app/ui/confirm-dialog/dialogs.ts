@@ -1,23 +1,33 @@
-import { Injectable, Injector, inject } from '@angular/core';
+import { Injectable, Injector, type Type, inject } from '@angular/core';
 import { firstValueFrom } from 'rxjs';
 import type { Question } from './confirm-dialog';
 
-/** Questions asked in a dialog; its code is fetched when the first one is asked. */
+/** Dialogs; their code, and Material's, is fetched when the first one is opened. */
 @Injectable({ providedIn: 'root' })
 export class Dialogs {
   private readonly injector = inject(Injector);
 
+  /** What the dialog closed with; undefined when it was dismissed. */
+  async open<Result>(
+    load: () => Promise<Type<unknown>>,
+    data: unknown,
+    width = '560px',
+  ): Promise<Result | undefined> {
+    const [{ MatDialog }, dialog] = await Promise.all([import('@angular/material/dialog'), load()]);
+    const opened = this.injector
+      .get(MatDialog)
+      .open<unknown, unknown, Result>(dialog, {
+        data,
+        width,
+        maxWidth: '94vw',
+        autoFocus: 'first-tabbable',
+      });
+    return firstValueFrom(opened.afterClosed());
+  }
+
   /** True when the person said yes. */
   async confirm(question: Question): Promise<boolean> {
-    const [{ MatDialog }, { ConfirmDialog }] = await Promise.all([
-      import('@angular/material/dialog'),
-      import('./confirm-dialog'),
-    ]);
-    const dialog = this.injector.get(MatDialog).open<unknown, Question, boolean>(ConfirmDialog, {
-      data: question,
-      width: '440px',
-      role: 'alertdialog',
-    });
-    return (await firstValueFrom(dialog.afterClosed())) ?? false;
+    const load = async () => (await import('./confirm-dialog')).ConfirmDialog;
+    return (await this.open<boolean>(load, question, '440px')) ?? false;
   }
 }
