@@ -1,6 +1,7 @@
 import { randomUUID } from 'node:crypto';
 import { open, rename, rm } from 'node:fs/promises';
 import { dirname } from 'node:path';
+import type { ReleasedSummary } from '#shared/contracts/disclosure';
 import type { ArchiveSource } from './archive-source';
 import { bagOf } from './bag';
 import { checkZip } from './check-zip';
@@ -19,8 +20,8 @@ export interface BuiltArchive {
 }
 
 /** Name of the bag's folder, and of the ZIP before ".zip". */
-export function bagFolder(source: ArchiveSource): string {
-  const { caseNumber, releaseNumber } = source.snapshot.summary;
+export function bagFolderOf(summary: ReleasedSummary): string {
+  const { caseNumber, releaseNumber } = summary;
   return `${caseNumber.replace(/[^A-Za-z0-9-]+/g, '-')}-release-${releaseNumber}`;
 }
 
@@ -38,7 +39,7 @@ export async function buildArchive(
 ): Promise<BuiltArchive> {
   const { summary } = source.snapshot;
   const releasedAt = new Date(summary.releasedAt);
-  const folder = bagFolder(source);
+  const folder = bagFolderOf(summary);
   const payload = payloadOf(source, folder);
   const bag = bagOf(payload, {
     organization: summary.laboratory,

@@ -52,7 +52,7 @@ a{color:var(--spruce)}
 table{border-collapse:collapse;width:100%;font-size:14.5px}
 th{font-weight:400;color:var(--muted);text-align:left;font-size:13px}
 td,th{padding:6px 12px 6px 0;border-bottom:1px solid var(--line);vertical-align:top}
-td.n,th.n{text-align:right;white-space:nowrap}
+td.n,th.n{text-align:right}td.n,.t{white-space:nowrap}
 small{color:var(--muted);font-size:13px}
 code,pre,.mono{font-family:'Atkinson Hyperlegible Mono',monospace;font-size:13px;overflow-wrap:anywhere}
 pre{background:var(--wash);padding:12px 14px;overflow-x:auto;white-space:pre-wrap}

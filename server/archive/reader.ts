@@ -1,7 +1,9 @@
 import type { ArchiveSource } from './archive-source';
 import { escapeMarkup as e } from './escape';
 import { listFiles } from './exhibit-files';
-import { figureTexts } from './figure-text';
+import { showRanged } from '#shared/units/show-quantity';
+import type { UnitSymbol } from '#shared/units/units';
+import type { Figure } from '#shared/contracts/findings';
 import { eventOf } from './ledger-files';
 import { planSvg } from './plan';
 import { cautions, planCaption } from './cautions';
@@ -12,7 +14,9 @@ import { sourceOf } from './survey-files';
 const mostMarks = 500;
 
 const day = (moment: string) => moment.slice(0, 10);
-const minute = (moment: string) => `${moment.slice(0, 10)} ${moment.slice(11, 16)} UTC`;
+/** Kept on one line. */
+const whole = (text: string) => `<span class="t">${text}</span>`;
+const minute = (moment: string) => whole(`${moment.slice(0, 10)} ${moment.slice(11, 16)} UTC`);
 
 function table(head: readonly string[], rows: readonly (readonly string[])[], numbers = 0): string {
   const place = (i: number, of: number) => (i >= of - numbers ? ' class="n"' : '');
@@ -36,13 +40,19 @@ function answers(source: ArchiveSource): string {
     .join('\n');
 }
 
+/** The unit for people first, the SI unit beside it. */
+function unitsOf({ quantity }: Figure, speedUnit: UnitSymbol): UnitSymbol[] {
+  if (quantity === 'speed') return [...new Set<UnitSymbol>([speedUnit, 'm/s'])];
+  return quantity === 'acceleration' ? ['m/s²', 'g'] : ['°/s', 'rad/s'];
+}
+
 function figures(source: ArchiveSource): string {
   const { figures, speedUnit } = source.snapshot.summary;
   if (figures.length === 0) return '<p>No figures were released.</p>';
   return table(
     ['Figure', 'Which point, which moment', 'Computation', 'Value', '95 % range'],
     figures.map((figure) => {
-      const texts = figureTexts(figure, speedUnit);
+      const texts = unitsOf(figure, speedUnit).map((unit) => showRanged(figure, unit));
       return [
         e(figure.title),
         `${e(figure.pointName)}, ${e(figure.stationName)}`,
@@ -51,7 +61,7 @@ function figures(source: ArchiveSource): string {
           `${figure.computation.slice(0, 12)}, solution ${figure.branch + 1}`,
         ),
         texts.map((text) => `${e(text.value)} ${e(text.unit)}`).join('<br>'),
-        texts.map((text) => e(text.range)).join('<br>'),
+        texts.map((text) => `${e(text.low)} to ${e(text.high)}`).join('<br>'),
       ];
     }),
     2,
@@ -71,7 +81,7 @@ function marks(source: ArchiveSource): string {
     table(
       ['Mark', 'Kind', 'Trace', 'Where from', 'x, m', 'y, m', 'u(x), cm', 'u(y), cm'],
       shown.map((mark) => [
-        e(mark.label),
+        whole(e(mark.label)),
         mark.kind,
         mark.trace === null ? '' : e(`${mark.trace} ${mark.order ?? ''}`),
         e(sourceOf(mark)),
@@ -90,7 +100,7 @@ function exhibits(source: ArchiveSource): string {
   return table(
     ['Exhibit', 'Kind', 'Description', 'Files (SHA-256)'],
     source.snapshot.exhibits.map((exhibit) => [
-      e(exhibit.number),
+      whole(e(exhibit.number)),
       exhibit.kind,
       e(exhibit.description) +
         (exhibit.source ? `<br><small>Source: ${e(exhibit.source)}</small>` : '') +
@@ -111,7 +121,7 @@ function withheld(source: ArchiveSource): string {
   if (items.length === 0) return '<p>Nothing was left out.</p>';
   return table(
     ['Exhibit', 'Reason', 'Explanation'],
-    items.map((item) => [e(item.exhibit), item.reason, e(item.explanation)]),
+    items.map((item) => [whole(e(item.exhibit)), item.reason, e(item.explanation)]),
   );
 }
 
@@ -120,14 +130,14 @@ function custody(source: ArchiveSource): string {
     ['No.', 'Recorded', 'Event', 'Exhibit', 'From, to', 'Seal', 'Where, why, note'],
     source.ledger.map((line) => {
       if (!('text' in line)) {
-        return [String(line.sequence), '', 'withheld', e(line.withheldExhibit), '', '', ''];
+        return [String(line.sequence), '', 'withheld', whole(e(line.withheldExhibit)), '', '', ''];
       }
       const event = eventOf(line.text);
       return [
         String(event.sequence),
         `${minute(event.recordedAt)}<br><small>by ${e(event.recordedBy.name)}</small>`,
         event.kind + (event.refersTo === null ? '' : ` (of no. ${event.refersTo})`),
-        e(event.exhibit ?? 'whole case'),
+        whole(e(event.exhibit ?? 'whole case')),
         e([event.releasedBy, event.receivedBy].filter(Boolean).join(' to ')),
         e([event.sealBefore, event.sealAfter].filter(Boolean).join(' to ')),
         e([event.location, event.purpose, event.condition, event.note].filter(Boolean).join('; ')),

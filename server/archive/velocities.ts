@@ -1,5 +1,5 @@
+import { quantitiesOf } from '#shared/engine/documents/motion-quantities';
 import { csv, type CsvCell } from './csv';
-import { quantitiesOf } from './quantities';
 import { motionOf } from './computation-text';
 import type { SnapshotComputation } from './snapshot';
 
