@@ -23,6 +23,7 @@ import {
   listMarks,
   markKinds,
   type Mark,
+  type MarkKind,
   type SurveyMapping,
 } from '#shared/contracts/survey';
 import { CaseRecord } from '../models/case';
@@ -227,10 +228,7 @@ async function solve(
 
 function mappingOf(scene: Scene): SurveyMapping {
   const { columns, codes, delimiter, lengthUnit, sigmaUnit } = scene.survey;
-  const kinds = Object.entries(codes).map(([code, meaning]) => {
-    const kind = markKinds.find((known) => meaning.toLowerCase().startsWith(known));
-    return [code, kind ?? 'other'] as const;
-  });
+  const kinds = Object.entries(codes).map(([code, meaning]) => [code, kindOf(meaning)] as const);
   return {
     delimiter,
     decimal: '.',
@@ -249,6 +247,14 @@ function mappingOf(scene: Scene): SurveyMapping {
     note: columns.remark,
     kinds: Object.fromEntries(kinds),
   };
+}
+
+/** The mark kind that a code of the sample stands for, from its plain meaning. */
+function kindOf(meaning: string): MarkKind {
+  if (meaning.includes('at rest')) return 'point of rest';
+  if (meaning.startsWith('road line')) return 'road edge';
+  if (meaning.startsWith('rolling print')) return 'tyre mark';
+  return markKinds.find((kind) => meaning.startsWith(kind)) ?? 'other';
 }
 
 /** A case that waits for the lead to assign it. */
