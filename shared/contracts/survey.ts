@@ -124,6 +124,19 @@ export const surveyImport = z.object({
 });
 export type SurveyImport = z.infer<typeof surveyImport>;
 
+/** A change of a mark: what it was before, who changed it, and why. */
+export const markChange = z.object({
+  markId: id,
+  /** The version that was changed. */
+  version,
+  withdrawn: z.boolean(),
+  before: mark.omit({ version: true }),
+  reason: z.string(),
+  by: z.string(),
+  at: moment,
+});
+export type MarkChange = z.infer<typeof markChange>;
+
 const markParams = caseParams.extend({ markId: id });
 
 export const listMarks = endpoint({
@@ -166,6 +179,15 @@ export const removeMark = endpoint({
   query: z.strictObject({ reason: line(1000) }),
   response: null,
   ifMatch: true,
+});
+
+export const listMarkChanges = endpoint({
+  method: 'GET',
+  path: '/api/cases/:caseId/mark-changes',
+  summary: 'Every change and withdrawal of marks of the case, newest first',
+  access: 'case-read',
+  params: caseParams,
+  response: z.object({ items: z.array(markChange) }),
 });
 
 export const importSurvey = endpoint({

@@ -1,6 +1,9 @@
 import { run } from '../connection';
 import { appendOnly, hash, refuseChanges, uuid, type Migration } from './migration';
 
+/** Labels and names of traces: "T1" and "t1" are two. */
+const name = 'VARCHAR(40) CHARACTER SET utf8mb4 COLLATE utf8mb4_bin';
+
 const tables = [
   `CREATE TABLE survey_imports (
      id ${uuid} PRIMARY KEY,
@@ -20,7 +23,7 @@ const tables = [
   `CREATE TABLE marks (
      id ${uuid} PRIMARY KEY,
      case_id ${uuid} NOT NULL,
-     label VARCHAR(40) NOT NULL,
+     label ${name} NOT NULL,
      kind VARCHAR(24) NOT NULL,
      x DOUBLE NOT NULL,
      y DOUBLE NOT NULL,
@@ -28,14 +31,14 @@ const tables = [
      cov_xy DOUBLE NOT NULL,
      var_y DOUBLE NOT NULL,
      height DOUBLE NULL,
-     trace VARCHAR(40) NULL,
+     trace ${name} NULL,
      place INT NULL,
      note VARCHAR(1000) NOT NULL,
      source LONGTEXT NOT NULL,
      version INT NOT NULL DEFAULT 1,
      removed_at DATETIME(6) NULL,
      -- Labels are unique among the marks that stand; a withdrawn one frees its label.
-     standing_label VARCHAR(40) AS (IF(removed_at IS NULL, label, NULL)) PERSISTENT,
+     standing_label ${name} AS (IF(removed_at IS NULL, label, NULL)) PERSISTENT,
      UNIQUE KEY marks_label (case_id, standing_label),
      FOREIGN KEY (case_id) REFERENCES cases (id)
    ) ENGINE=InnoDB`,
