@@ -53,7 +53,8 @@ async function serve(database, data) {
     {
       cwd: root,
       env,
-      stdio: ['ignore', 'pipe', 'inherit'],
+      // The channel closes when this process ends, however it ends; the server then stops itself.
+      stdio: ['ignore', 'pipe', 'inherit', 'ipc'],
       // Ctrl-C reaches this process alone, which then stops the server before its database.
       detached: true,
     },

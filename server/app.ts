@@ -15,6 +15,8 @@ export function createApp(services: Services): Express {
   const app = express();
   app.disable('x-powered-by');
   app.set('query parser', 'simple');
+  // An ETag here is a version for If-Match (http/serve-route.ts), never a checksum of the answer.
+  app.set('etag', false);
   if (config.behindTlsProxy) app.set('trust proxy', 1);
   app.use(
     pinoHttp({

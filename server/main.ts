@@ -13,13 +13,15 @@ services.log.info({ address: running.address }, 'serving');
 process.stdout.write(`Centrode serves on ${running.address}\n`);
 
 let stopping = false;
-for (const signal of ['SIGINT', 'SIGTERM'] as const) {
-  process.on(signal, () => {
-    if (stopping) return;
-    stopping = true;
-    running.stop().then(
-      () => process.exit(0),
-      () => process.exit(1),
-    );
-  });
+function stop(): void {
+  if (stopping) return;
+  stopping = true;
+  running.stop().then(
+    () => process.exit(0),
+    () => process.exit(1),
+  );
 }
+process.on('SIGINT', stop);
+process.on('SIGTERM', stop);
+// scripts/start.mjs was killed: nothing may be left that holds the port.
+process.on('disconnect', stop);
