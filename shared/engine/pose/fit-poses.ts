@@ -9,7 +9,6 @@ import { fit, type Fit } from './fit';
 import { dimension, place, poseFrom, type BodySlot, type Place } from './layout';
 import { judge } from './quality';
 
-
 /** rad: a heading less certain than this is beyond what first-order propagation can carry. */
 const looseHeading = 0.15;
 /** rad: a heading less certain than this is not known at all. */

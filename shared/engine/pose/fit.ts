@@ -43,14 +43,13 @@ export function fit(problem: PoseProblem): Fit {
   let worst = { of: '', gap: Infinity };
   let iterations = 0;
   for (const poses of startingPoses(problem, layout)) {
-    const from = unknownsFrom(layout, poses);
-    const start = manifold.project(from);
-    if (start === null) {
-      const gap = manifold.worst(from);
-      if (gap.gap < worst.gap) worst = gap;
+    const start = manifold.project(unknownsFrom(layout, poses));
+    if (!start.closed) {
+      const left = manifold.worst(start.x);
+      if (left.gap < worst.gap) worst = left;
       continue;
     }
-    const found = descend(equations, manifold, start, even);
+    const found = descend(equations, manifold, start.x, even);
     iterations += found.iterations;
     if (!minima.some((other) => isSame(layout, other.x, found.x))) minima.push(found);
   }
@@ -112,7 +111,8 @@ function descend(
       move: (x, step) => {
         const basis = manifold.basis(x, freedom);
         const along = multiply(basis, step, x.length, freedom, 1);
-        return manifold.project(x.map((value, i) => value + along[i]));
+        const moved = manifold.project(x.map((value, i) => value + along[i]));
+        return moved.closed ? moved.x : null;
       },
     },
     start,

@@ -38,9 +38,9 @@ export class Manifold {
     return this.size - (this.constraints.length === 0 ? 0 : this.factors(x).rank);
   }
 
-  /** The point of the surface near x; null when Newton's iteration finds none. */
-  project(x: Float64Array): Float64Array | null {
-    if (this.constraints.length === 0) return x;
+  /** The point of the surface near x; `closed` is false where Newton's iteration finds none. */
+  project(x: Float64Array): { x: Float64Array; closed: boolean } {
+    if (this.constraints.length === 0) return { x, closed: true };
     let at = x;
     let gap = this.gap(at);
     for (let i = 0; i < mostSteps; i++) {
@@ -58,7 +58,7 @@ export class Manifold {
       at = trial;
       gap = trialGap;
     }
-    return this.worst(at).gap <= closed ? at : null;
+    return { x: at, closed: this.worst(at).gap <= closed };
   }
 
   /** The constraint that is met worst. */

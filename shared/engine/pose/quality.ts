@@ -1,34 +1,17 @@
 import type { MarkResidual, PriorResidual } from '../documents/pose-solution';
 import type { PoseProblem } from '../documents/pose-problem';
-import { symmetricEigen } from '../geometry/symmetric-eigen';
+import { symmetricEigen } from '../least-squares/symmetric-eigen';
 import { scale, turnLeft, unit, type Vector } from '../geometry/vector';
-import { equivalentDeviate, nonCentrality } from '../uncertainty/distributions';
+import { noRedundancy, testForBlunder } from '../least-squares/baarda';
+import { nonCentrality } from '../uncertainty/distributions';
 import type { Observation, Row } from './equations';
 import type { Fit } from './fit';
 import { whiten } from './whitened';
 
-/** Relative to the whole: less redundancy than this is none, the rest being rounding. */
-const noRedundancy = 1e-9;
-
-interface Test {
-  readonly w: number | null;
-  readonly leverage: number;
-  /** Cofactors of the whitened residuals, I − H for this observation. */
-  readonly remaining: readonly (readonly number[])[];
-}
-
-/**
- * Baarda's test of one observation of a fit.
- *
- * With e the whitened residual and Q = I − H its cofactors, T = eᵀ·Q⁺·e is χ² with rank(Q)
- * degrees of freedom when the observation holds no blunder.
- * Source: W. Baarda, Publications on Geodesy 2(5), Netherlands Geodetic Commission, 1968.
- */
-function test(fit: Fit, observation: Observation, rows: readonly Row[], weight: number): Test {
-  const size = fit.layout.size;
-  const e = whiten(observation, rows);
-  const gradients = observation.whitening.map((coefficients) => {
-    const sum = new Float64Array(size);
+/** Derivatives of the whitened residuals. */
+function whitenedGradients(observation: Observation, rows: readonly Row[]): Float64Array[] {
+  return observation.whitening.map((coefficients) => {
+    const sum = new Float64Array(rows[0].gradient.length);
     coefficients.forEach((coefficient, j) =>
       rows[j].gradient.forEach((value, c) => {
         sum[c] += coefficient * value;
@@ -36,27 +19,6 @@ function test(fit: Fit, observation: Observation, rows: readonly Row[], weight: 
     );
     return sum;
   });
-  const hat = gradients.map((a) => {
-    const through = new Float64Array(size);
-    for (let i = 0; i < size; i++)
-      for (let j = 0; j < size; j++) through[i] += fit.covariance[i * size + j] * a[j];
-    return gradients.map((b) => weight * b.reduce((sum, value, i) => sum + value * through[i], 0));
-  });
-  const remaining = hat.map((row, i) => row.map((h, j) => (i === j ? 1 - h : -h)));
-  const { values, vectors } = symmetricEigen(remaining);
-  let statistic = 0;
-  let rank = 0;
-  values.forEach((value, k) => {
-    if (value <= noRedundancy) return;
-    rank++;
-    statistic += vectors[k].reduce((sum, v, i) => sum + v * e[i], 0) ** 2 / value;
-  });
-  const trace = hat.reduce((sum, row, i) => sum + row[i], 0);
-  return {
-    w: rank === 0 ? null : equivalentDeviate(statistic, rank),
-    leverage: Math.min(1, trace / hat.length),
-    remaining,
-  };
 }
 
 export function judge(
@@ -68,7 +30,12 @@ export function judge(
   const marksById = new Map(problem.marks.map((mark) => [mark.id, mark]));
   fit.equations.observations.forEach((observation, k) => {
     const rows = observation.evaluate(fit.x);
-    const { w, leverage, remaining } = test(fit, observation, rows, fit.weights[k]);
+    const { w, leverage, remaining } = testForBlunder(
+      whiten(observation, rows),
+      whitenedGradients(observation, rows),
+      fit.covariance,
+      fit.weights[k],
+    );
     if (observation.kind === 'prior') {
       priors.push({ of: observation.id, residual: rows[0].value, w, leverage });
       return;

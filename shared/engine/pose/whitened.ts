@@ -1,3 +1,4 @@
+import { huberWeight } from '../least-squares/huber';
 import type { Observation, Row } from './equations';
 
 /**
@@ -50,15 +51,7 @@ export const whiten = (observation: Observation, rows: readonly Row[]): readonly
     coefficients.reduce((sum, coefficient, j) => sum + coefficient * rows[j].value, 0),
   );
 
-/**
- * Huber's bound for residual vectors of one, two and three components: each is passed by the same
- * share (17.9 %) of good observations as k = 1.345 in one dimension, which keeps 95 % efficiency.
- * k² is the 0.8214 quantile of χ² with that many degrees of freedom.
- * Source: P. J. Huber, Robust Statistics, Wiley 1981 (k = 1.345 from memory).
- */
-const bounds = [1.345, 1.8559, 2.2167];
-
-/** min(1, k/|u|) of each mark; priors keep weight 1, since a joint is not a blunder. */
+/** Huber's weight of each mark; priors keep weight 1, since a joint is not a blunder. */
 export const observationWeights = (
   observations: readonly Observation[],
   x: Float64Array,
@@ -66,6 +59,5 @@ export const observationWeights = (
   observations.map((observation) => {
     if (observation.kind !== 'mark') return 1;
     const size = Math.hypot(...whiten(observation, observation.evaluate(x)));
-    const bound = bounds[observation.whitening.length - 1];
-    return size > bound ? bound / size : 1;
+    return huberWeight(size, observation.whitening.length);
   });
