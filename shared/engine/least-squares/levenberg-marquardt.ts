@@ -1,4 +1,4 @@
-import { applyTransposed, factorise, type Qr } from './qr';
+import { applyTransposed, factorise, solve, type Qr } from './qr';
 
 /**
  * Non-linear least squares: the x that makes |r(x)|² least.
@@ -64,15 +64,8 @@ export function minimise(
     if (scaling) rescale(scale, jacobian, m, iteration === 1);
     if (iteration === 1) trust = radius * (size(x) || 1);
     const projected = applyTransposed(qr, current.residuals);
-    const done = (converged: boolean): LeastSquaresResult => ({
-      x,
-      residuals: current.residuals,
-      jacobian,
-      sumOfSquares: norm * norm,
-      iterations: iteration,
-      converged,
-    });
-    if (n === 0 || gradientIsZero(qr, jacobian, current.residuals, norm)) return done(true);
+    const done = (): LeastSquaresResult => polished(problem, x, current, jacobian, iteration);
+    if (n === 0 || gradientIsZero(qr, jacobian, current.residuals, norm)) return done();
     for (;;) {
       const { step, lambda } = trustRegionStep(qr, projected, scale, trust, damping);
       damping = lambda;
@@ -103,9 +96,9 @@ export function minimise(
         jacobian = current.jacobian();
       }
       const negligible = Math.abs(actual) <= tolerance && predicted <= tolerance && ratio <= 2;
-      if (negligible || trust <= Number.EPSILON * size(x)) return done(true);
+      if (negligible || trust <= Number.EPSILON * size(x)) return done();
       if (ratio >= 1e-4) break;
-      if (predicted <= Number.EPSILON ** 2 || trust < 1e-300) return done(true);
+      if (predicted <= Number.EPSILON ** 2 || trust < 1e-300) return done();
     }
   }
   return {
@@ -115,6 +108,44 @@ export function minimise(
     sumOfSquares: norm * norm,
     iterations: maxIterations,
     converged: false,
+  };
+}
+
+const polishings = 3;
+
+/**
+ * The test on |r|² leaves an error of about the root of its tolerance in x: full Gauss–Newton steps
+ * take it away, as long as they keep |r|² to rounding.
+ */
+function polished(
+  problem: LeastSquaresProblem,
+  from: Float64Array,
+  evaluation: Evaluation,
+  slopes: Float64Array,
+  iterations: number,
+): LeastSquaresResult {
+  let x = from;
+  let current = evaluation;
+  let jacobian = slopes;
+  let norm = euclid(current.residuals);
+  for (let i = 0; i < polishings && problem.freedom > 0 && norm > 0; i++) {
+    const qr = factorise(jacobian, current.residuals.length, problem.freedom);
+    if (qr.rank < problem.freedom) break;
+    const step = solve(qr, current.residuals).map((value) => -value);
+    const moved = problem.move ? problem.move(x, step) : sum(x, step);
+    if (moved === null) break;
+    const next = problem.evaluate(moved);
+    const nextNorm = euclid(next.residuals);
+    if (!(nextNorm <= norm * (1 + 1e-14))) break;
+    [x, current, jacobian, norm] = [moved, next, next.jacobian(), nextNorm];
+  }
+  return {
+    x,
+    residuals: current.residuals,
+    jacobian,
+    sumOfSquares: norm * norm,
+    iterations,
+    converged: true,
   };
 }
 
