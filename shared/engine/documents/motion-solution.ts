@@ -120,7 +120,8 @@ export const motionSolution = z.object({
    * problem that fixes the velocities alone is determined, and `levels.acceleration` says what it lacks.
    */
   status: motionStatus,
-  levels: z.object({ velocity: levelVerdict, acceleration: levelVerdict }),
+  /** No accelerations are sought where no velocities were found. */
+  levels: z.object({ velocity: levelVerdict, acceleration: levelVerdict.nullable() }),
   /** Every motion that agrees with the knowns, best fit first; empty when none does. */
   branches: z.array(branch),
   redundancy: z.int(),

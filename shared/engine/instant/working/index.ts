@@ -1,0 +1,2 @@
+import type { Working } from './working';
+export const workInstant = (): Working => ({ steps: [] });
