@@ -1,5 +1,6 @@
 import type { Server } from 'node:http';
 import type { AddressInfo } from 'node:net';
+import { join } from 'node:path';
 import pino from 'pino';
 import { QueryTypes } from 'sequelize';
 import { AccessLog } from './access-log/access-log';
@@ -9,7 +10,12 @@ import { connect } from './database/connection';
 import { grantApplication } from './database/grants';
 import { migrator } from './database/migrate';
 import { initModels } from './database/models';
+import { ArchiveJobs } from './disclosure/archive-jobs';
+import { sweepStore } from './exhibits/sweep-store';
+import { openSigningKey } from './ledger/signing-key';
 import type { Services } from './services';
+import { FileStore } from './store/file-store';
+import { Inspector } from './store/inspector';
 
 export interface Running {
   readonly address: string;
@@ -34,7 +40,18 @@ export function createServices(config: Config): Services {
   const log = pino({ level: config.logLevel });
   const sequelize = connect(config.databaseUrl, log);
   initModels(sequelize);
-  return { config, log, sequelize, accessLog: new AccessLog(sequelize) };
+  const keysDir = join(config.dataDir, 'keys');
+  const services = {
+    config,
+    log,
+    sequelize,
+    accessLog: new AccessLog(sequelize),
+    store: new FileStore(join(config.dataDir, 'store')),
+    inspector: new Inspector(),
+    signingKey: openSigningKey(keysDir),
+    keysDir,
+  };
+  return { ...services, archives: new ArchiveJobs(services) };
 }
 
 /** Serves until stopped. */
@@ -43,6 +60,8 @@ export async function listen(services: Services): Promise<Running> {
   await sequelize.query('DELETE FROM sessions WHERE expires < UTC_TIMESTAMP()', {
     type: QueryTypes.DELETE,
   });
+  await sweepStore(services);
+  await services.archives.resume();
   const app = createApp(services);
   const server = await new Promise<Server>((done, failed) => {
     const listening = app.listen(config.port, config.host, (error?: Error) => {
@@ -64,7 +83,9 @@ export async function listen(services: Services): Promise<Running> {
       const patience = setTimeout(() => server.closeAllConnections(), 5000);
       await closed;
       clearTimeout(patience);
+      await services.archives.stop();
       await accessLog.idle();
+      await services.inspector.close();
       await sequelize.close();
     },
   };

@@ -96,7 +96,7 @@ const tampers: Record<string, Tamper> = {
     const at = pick(bytes.length);
     bytes[at] ^= 1 + pick(30);
     const rows = replaced(ledger.rows, i, { ...ledger.rows[i], text: bytes.toString() });
-    return { evidence: { ...ledger, rows }, expected: ['altered ' + (i + 1), mismatch(i + 1)] };
+    return { evidence: { ...ledger, rows }, expected: [`altered ${i + 1}`, mismatch(i + 1)] };
   },
   'the stored hash': (ledger, pick) => {
     const i = pick(count);
