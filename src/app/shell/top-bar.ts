@@ -1,18 +1,12 @@
 import { ChangeDetectionStrategy, Component, computed, inject, signal } from '@angular/core';
 import { MatButton } from '@angular/material/button';
 import { RouterLink, RouterLinkActive } from '@angular/router';
-import type { AccountRole } from '#shared/contracts/accounts';
 import { Messages } from '../core/messages/messages';
+import { roleNames } from '../laboratory/role-names';
 import { Session } from '../core/session/session';
 import { Icon } from '../ui/icon/icon';
 import { Mark } from './mark';
 import { ThemeSwitch } from './theme-switch';
-
-const roleNames: Record<AccountRole, string> = {
-  'laboratory-lead': 'laboratory lead',
-  investigator: 'investigator',
-  attorney: 'attorney',
-};
 
 @Component({
   selector: 'app-top-bar',

@@ -134,11 +134,12 @@ export class BriefForm {
     if (theirs === null) return;
     const base = briefOf(this.base);
     const mine = this.entered();
-    const changes = changesOf(base, mine);
-    const disputed = this.differences().map((difference) => difference.key);
-    for (const key of disputed) if (!keep.includes(key)) delete changes[key];
+    const givenUp = this.differences().filter(({ key }) => !keep.includes(key));
+    const kept = Object.entries(changesOf(base, mine)).filter(
+      ([key]) => !givenUp.some((difference) => difference.key === key),
+    );
     this.base = theirs;
-    this.fill({ ...briefOf(theirs), ...changes });
+    this.fill({ ...briefOf(theirs), ...Object.fromEntries(kept) });
     this.theirs.set(null);
     await this.save();
   }

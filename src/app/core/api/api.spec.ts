@@ -105,7 +105,7 @@ describe('the typed client', () => {
     http
       .expectOne(`/api/cases/${caseId}/marks/${markId}?reason=counted+twice`)
       .flush(null, { status: 204, statusText: '' });
-    expect(await answer).toBeUndefined();
+    await expect(answer).resolves.toBeUndefined();
   });
 
   it('when fields are at fault, then each keeps its message', async () => {

@@ -14,14 +14,12 @@ export class Dialogs {
     width = '560px',
   ): Promise<Result | undefined> {
     const [{ MatDialog }, dialog] = await Promise.all([import('@angular/material/dialog'), load()]);
-    const opened = this.injector
-      .get(MatDialog)
-      .open<unknown, unknown, Result>(dialog, {
-        data,
-        width,
-        maxWidth: '94vw',
-        autoFocus: 'first-tabbable',
-      });
+    const opened = this.injector.get(MatDialog).open<unknown, unknown, Result>(dialog, {
+      data,
+      width,
+      maxWidth: '94vw',
+      autoFocus: 'first-tabbable',
+    });
     return firstValueFrom(opened.afterClosed());
   }
 

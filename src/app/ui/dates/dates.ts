@@ -23,3 +23,8 @@ export function showMoment(moment: string): string {
 export function showExactMoment(moment: string): string {
   return `${showDay(moment.slice(0, 10))}, ${moment.slice(11, 19)} UTC`;
 }
+
+/** What a person typed by the clock of this device ("2026-12-01T13:24"), as a moment in UTC. */
+export function utcFromLocal(text: string): string {
+  return new Date(text).toISOString();
+}
