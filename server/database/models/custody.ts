@@ -45,35 +45,35 @@ export class CustodyHeadRecord extends Model<
   declare signature: string;
 }
 
-const key = { type: DataTypes.CHAR(36), allowNull: false, primaryKey: true };
-const hash = { type: DataTypes.CHAR(64), allowNull: false };
-const whole = { type: DataTypes.INTEGER, allowNull: false };
-const moment = { type: DataTypes.CHAR(27), allowNull: false };
+const key = () => ({ type: DataTypes.CHAR(36), allowNull: false, primaryKey: true });
+const hash = () => ({ type: DataTypes.CHAR(64), allowNull: false });
+const whole = () => ({ type: DataTypes.INTEGER, allowNull: false });
+const moment = () => ({ type: DataTypes.CHAR(27), allowNull: false });
 
 export function initCustody(sequelize: Sequelize): void {
   CustodyChainRecord.init(
-    { caseId: key, sequence: whole, hash, lastOrdinal: whole },
+    { caseId: key(), sequence: whole(), hash: hash(), lastOrdinal: whole() },
     { sequelize, tableName: 'custody_chains', modelName: 'custodyChain' },
   );
   CustodyEventRecord.init(
     {
-      caseId: key,
-      sequence: { ...whole, primaryKey: true },
+      caseId: key(),
+      sequence: { ...whole(), primaryKey: true },
       exhibit: { type: DataTypes.STRING(40), allowNull: true },
       kind: { type: DataTypes.STRING(24), allowNull: false },
-      recordedAt: moment,
-      previousHash: { ...hash, field: 'previous' },
+      recordedAt: moment(),
+      previousHash: { ...hash(), field: 'previous' },
       canonical: { type: DataTypes.TEXT('medium'), allowNull: false },
-      hash,
+      hash: hash(),
     },
     { sequelize, tableName: 'custody_events', modelName: 'custodyEvent' },
   );
   CustodyHeadRecord.init(
     {
-      caseId: key,
-      sequence: { ...whole, primaryKey: true },
-      hash,
-      signedAt: moment,
+      caseId: key(),
+      sequence: { ...whole(), primaryKey: true },
+      hash: hash(),
+      signedAt: moment(),
       keyId: { type: DataTypes.CHAR(16), allowNull: false },
       signature: { type: DataTypes.CHAR(128), allowNull: false },
     },

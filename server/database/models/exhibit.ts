@@ -77,19 +77,19 @@ export class DerivativeRecord extends Model<
   declare recipe: string;
 }
 
-const uuid = { type: DataTypes.CHAR(36), allowNull: false };
-const optionalUuid = { type: DataTypes.CHAR(36), allowNull: true };
-const hash = { type: DataTypes.CHAR(64), allowNull: false };
+const uuid = () => ({ type: DataTypes.CHAR(36), allowNull: false });
+const optionalUuid = () => ({ type: DataTypes.CHAR(36), allowNull: true });
+const hash = () => ({ type: DataTypes.CHAR(64), allowNull: false });
 const line = (most: number) => ({ type: DataTypes.STRING(most), allowNull: false });
-const whole = { type: DataTypes.INTEGER, allowNull: false };
-const time = { type: DataTypes.DATE(6), allowNull: false };
+const whole = () => ({ type: DataTypes.INTEGER, allowNull: false });
+const time = () => ({ type: DataTypes.DATE(6), allowNull: false });
 
 export function initExhibits(sequelize: Sequelize): void {
   ExhibitRecord.init(
     {
-      id: { ...uuid, primaryKey: true },
-      caseId: uuid,
-      ordinal: whole,
+      id: { ...uuid(), primaryKey: true },
+      caseId: uuid(),
+      ordinal: whole(),
       number: line(40),
       kind: line(24),
       description: line(1000),
@@ -102,31 +102,31 @@ export function initExhibits(sequelize: Sequelize): void {
       sealOnReceipt: line(80),
       sensitive: { type: DataTypes.BOOLEAN, allowNull: false },
       parentNumber: { type: DataTypes.STRING(40), allowNull: true },
-      registeredAt: time,
-      registeredBy: uuid,
-      version: { ...whole, defaultValue: 1 },
-      holderId: optionalUuid,
+      registeredAt: time(),
+      registeredBy: uuid(),
+      version: { ...whole(), defaultValue: 1 },
+      holderId: optionalUuid(),
       heldSince: { type: DataTypes.DATE(6), allowNull: true },
       location: line(400),
       seal: line(80),
       pendingSequence: { type: DataTypes.INTEGER, allowNull: true },
-      pendingToId: optionalUuid,
+      pendingToId: optionalUuid(),
     },
     { sequelize, tableName: 'exhibits', modelName: 'exhibit' },
   );
   ExhibitFileRecord.init(
     {
-      id: { ...uuid, primaryKey: true },
-      caseId: uuid,
-      exhibitId: uuid,
+      id: { ...uuid(), primaryKey: true },
+      caseId: uuid(),
+      exhibitId: uuid(),
       name: line(255),
       mediaType: line(127),
       size: { type: DataTypes.BIGINT, allowNull: false },
-      sha256: hash,
+      sha256: hash(),
       sha512: { type: DataTypes.CHAR(128), allowNull: false },
       statedSha256: { type: DataTypes.CHAR(64), allowNull: true },
-      takenInAt: time,
-      eventSequence: whole,
+      takenInAt: time(),
+      eventSequence: whole(),
       width: { type: DataTypes.INTEGER, allowNull: true },
       height: { type: DataTypes.INTEGER, allowNull: true },
       latitude: { type: DataTypes.DOUBLE, allowNull: true },
@@ -137,13 +137,13 @@ export function initExhibits(sequelize: Sequelize): void {
   );
   DerivativeRecord.init(
     {
-      fileId: { ...uuid, primaryKey: true },
+      fileId: { ...uuid(), primaryKey: true },
       kind: { ...line(24), primaryKey: true },
       mediaType: line(127),
-      width: whole,
-      height: whole,
+      width: whole(),
+      height: whole(),
       size: { type: DataTypes.BIGINT, allowNull: false },
-      sha256: hash,
+      sha256: hash(),
       recipe: line(400),
     },
     { sequelize, tableName: 'derivatives', modelName: 'derivative' },
