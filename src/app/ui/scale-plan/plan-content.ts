@@ -86,6 +86,7 @@ export interface PlanMove {
  *                                        null (machines): the axes are shown instead
  *     [feet]="true"                      a scale bar in feet beside the one in metres
  *     [ellipseScale]="1"                 exaggeration of the 95 % ellipses; 0 hides them
+ *     [largest]="{ velocity: 20 }"       magnitudes to come, m/s and m/s²: one scale while a motion plays
  *     [movable]="true" (moved)="…"       marks may be dragged: PlanMove
  *     (pointed)="…"                      an empty place was clicked: PlanPoint
  *   />
