@@ -34,7 +34,8 @@ export async function releaseToParty(
   checkChoice(entry, await exhibitsOf(scope));
   const intact = await checkFiles(services, scope, entry);
 
-  const release = await withLedger(services, scope, async ({ transaction, append }) => {
+  const release = await withLedger(services, scope, async (ledger) => {
+    const { transaction } = ledger;
     // Asked again under the lock: what came in meanwhile is neither released nor withheld yet.
     const exhibits = await exhibitsOf(scope, transaction);
     checkChoice(entry, exhibits);
@@ -61,7 +62,7 @@ export async function releaseToParty(
       ),
     );
     const snapshotHash = sha256Hex(snapshot);
-    const { event } = await append({
+    const { event } = await ledger.append({
       kind: 'released',
       exhibit: null,
       receivedBy: party.name,

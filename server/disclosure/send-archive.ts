@@ -36,7 +36,7 @@ export async function sendArchive(
   await new Promise<void>((done, failed) => {
     response.sendFile(file, { dotfiles: 'allow', cacheControl: false }, (error?: Error) => {
       // Whoever breaks the download off comes back for the rest.
-      if (error && !response.headersSent) failed(error);
+      if (error && !response.headersSent) failed(problemOf(error, Number(archive.size)));
       else done();
     });
   });
@@ -49,4 +49,10 @@ async function sizeOf(file: string): Promise<number | null> {
     if (isMissing(error)) return null;
     throw error;
   }
+}
+
+function problemOf(error: Error, size: number): Error {
+  const { status } = error as { status?: unknown };
+  if (status !== 416) return error;
+  return new HttpProblem(416, 'No such part', `The archive has ${size} bytes.`);
 }
