@@ -18,19 +18,13 @@ import {
   type exhibitKinds,
 } from '#shared/contracts/exhibits';
 import { addReconstruction, recordComputation } from '#shared/contracts/motion';
-import {
-  importSurvey,
-  listMarks,
-  markKinds,
-  type Mark,
-  type MarkKind,
-  type SurveyMapping,
-} from '#shared/contracts/survey';
+import { importSurvey, listMarks, type Mark } from '#shared/contracts/survey';
 import { CaseRecord } from '../models/case';
 import type { Colleagues } from './demo';
 import { releaseDemo } from './release-demo';
 import type { Scene } from './scene';
 import { reconstructionOf } from './scene-motion';
+import { mappingOf } from './scene-survey';
 
 type IncidentKind = (typeof incidentKinds)[number];
 
@@ -224,37 +218,6 @@ async function solve(
     hashes.set(station.id, recorded.hash);
   }
   return hashes;
-}
-
-function mappingOf(scene: Scene): SurveyMapping {
-  const { columns, codes, delimiter, lengthUnit, sigmaUnit } = scene.survey;
-  const kinds = Object.entries(codes).map(([code, meaning]) => [code, kindOf(meaning)] as const);
-  return {
-    delimiter,
-    decimal: '.',
-    unit: lengthUnit,
-    sigmaUnit,
-    label: columns.id,
-    x: columns.x,
-    y: columns.y,
-    height: columns.height,
-    sigmaX: columns.sigmaX,
-    sigmaY: columns.sigmaY,
-    sigma: null,
-    code: columns.code,
-    trace: columns.string,
-    order: columns.sequence,
-    note: columns.remark,
-    kinds: Object.fromEntries(kinds),
-  };
-}
-
-/** The mark kind that a code of the sample stands for, from its plain meaning. */
-function kindOf(meaning: string): MarkKind {
-  if (meaning.includes('at rest')) return 'point of rest';
-  if (meaning.startsWith('road line')) return 'road edge';
-  if (meaning.startsWith('rolling print')) return 'tyre mark';
-  return markKinds.find((kind) => meaning.startsWith(kind)) ?? 'other';
 }
 
 /** A case that waits for the lead to assign it. */

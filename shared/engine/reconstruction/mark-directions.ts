@@ -1,5 +1,6 @@
 import type { MarkDirection, StationMark, StationProblem } from '../documents/station';
 import { EngineError } from '../errors';
+import { alongTrace } from '../geometry/trace-order';
 import { traceTangent } from '../geometry/trace-tangent';
 
 /**
@@ -38,7 +39,5 @@ export function markDirections({ station, marks }: StationProblem): MarkDirectio
 
 function traceOf(mark: StationMark, marks: readonly StationMark[]): readonly StationMark[] {
   if (mark.trace === null) return [];
-  return marks
-    .filter(({ trace }) => trace === mark.trace)
-    .sort((a, b) => (a.order ?? 0) - (b.order ?? 0));
+  return alongTrace(marks.filter(({ trace }) => trace === mark.trace));
 }
