@@ -185,7 +185,7 @@ export const known = z.discriminatedUnion('quantity', [
   z.strictObject({ ...vectorKnown, quantity: z.literal('acceleration') }),
   z.strictObject({ ...scalarKnown, quantity: z.literal('angular-velocity'), body: id }),
   z.strictObject({ ...scalarKnown, quantity: z.literal('angular-acceleration'), body: id }),
-  /** Along the direction of a slot, guide or rolling contact. */
+  /** Along the direction of a slot, guide or rolling contact, or in the plane of a wheel. */
   z.strictObject({ ...scalarKnown, quantity: z.literal('slide-rate'), joint: id }),
   z.strictObject({ ...scalarKnown, quantity: z.literal('slide-acceleration'), joint: id }),
   /** Of a link whose `rate` (or `rateChange`) is null. */

@@ -51,7 +51,7 @@ export const pointMotion = z.object({
   sigma: z.object({ speed: number.nullable(), direction: number.nullable() }),
 });
 
-/** Along a slot, guide or rolling contact, or of the length of a link. */
+/** Along a slot, guide or rolling contact, in the plane of a wheel, or of the length of a link. */
 export const jointMotion = z.object({
   slideRate: number.nullable(),
   slideAcceleration: number.nullable(),

@@ -98,7 +98,7 @@ export const writeKnown = (
       rows.right[at] = s.g[k.valueAt];
       return;
     case 'slide':
-      writeSlideRow(k.joint, level, s, rows, at);
+      writeSlideRow(k.joint, ground, level, s, rows, at);
       rows.right[at] += s.g[k.valueAt];
       return;
   }

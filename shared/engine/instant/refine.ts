@@ -9,7 +9,7 @@ import { writeEquations } from './equations';
 import type { Model, State } from './model';
 import { turn } from './model';
 import { rowResidual, rowsFor } from './rows';
-import type { LevelResult, Task } from './task';
+import type { Held, LevelResult, Task } from './task';
 import { motionOf } from './task';
 
 const rounds = 60;
@@ -40,7 +40,7 @@ export const refine = (
   task: Task,
   s: State,
   start: Float64Array,
-  held: readonly number[],
+  held: readonly Held[],
 ): LevelResult | null => {
   const { model, equations, scales } = task;
   const m = model.noises.length;
@@ -55,8 +55,8 @@ export const refine = (
     writeEquations(equations, model.ground, s, rows);
     const norms = rowNorms(rows, scales, model.ground);
     const a = denseRows(model, rows, all, scales, norms);
-    for (const column of held)
-      for (let r = 0; r < a.rows; r++) a.values[r * a.columns + column] = 0;
+    for (const { unknown } of held)
+      for (let r = 0; r < a.rows; r++) a.values[r * a.columns + unknown] = 0;
     const b = denseColumns(task.columns(s), equations.count, all, norms);
     const w = Float64Array.from(all, (k) => rowResidual(rows, k, motion) / norms[k]);
     for (let k = 0; k < w.length; k++)
@@ -113,7 +113,7 @@ interface Solved {
   readonly b: Dense;
   readonly structure: Structure;
   readonly adjustment: Adjustment;
-  readonly held: readonly number[];
+  readonly held: readonly Held[];
 }
 
 const resultOf = (task: Task, s: State, solved: Solved): LevelResult => {
@@ -132,12 +132,17 @@ const resultOf = (task: Task, s: State, solved: Solved): LevelResult => {
     return error;
   });
   const free = structure.free
-    .filter((z) => !held.some((h) => z[h] !== 0))
+    .filter((z) => !held.some((h) => z[h.unknown] !== 0))
     .map((z) => {
       const vector = new Float64Array(length);
       for (let i = 0; i < a.columns; i++) vector[i] = z[i] / scales[i];
       return vector;
     });
+  for (const { bodies } of held) {
+    const vector = new Float64Array(length);
+    for (const b of bodies) vector.set(motion.subarray(3 * b, 3 * b + 3), 3 * b);
+    free.push(vector);
+  }
   return {
     motion,
     errors,

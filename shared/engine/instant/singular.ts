@@ -17,14 +17,15 @@ const aside = 1e-2;
 export const isSingularPosition = (
   model: Model,
   equations: Equations,
-  rank: number,
   motion: Float64Array,
   tolerance: number,
-): boolean =>
-  [1, 2].some((seed) => {
+): boolean => {
+  const rank = rankOf(model, equations, motion, tolerance);
+  return [1, 2].some((seed) => {
     const moved = moveAside(model, seed);
-    return moved !== null && rankOf(moved, equations, motion, tolerance) > rank;
+    return moved !== null && rankOf(moved, equations, motion, Math.max(tolerance, 1e-6)) > rank;
   });
+};
 
 const rankOf = (
   model: Model,
@@ -41,7 +42,7 @@ const rankOf = (
     (k) => !equations.quadratic.includes(k),
   );
   const norms = rowNorms(rows, scales, model.ground);
-  return pivotedQr(denseRows(model, rows, linear, scales, norms), Math.max(tolerance, 1e-6)).rank;
+  return pivotedQr(denseRows(model, rows, linear, scales, norms), tolerance).rank;
 };
 
 /** A neighbouring position with the joints closed, or null when none is found. */

@@ -13,14 +13,14 @@ import type { ModelKnown, Place, State } from './model';
 import { armX, armY } from './model';
 import { contradicts } from './refine';
 import { rowResidual } from './rows';
-import type { Task } from './task';
+import type { Held, Task } from './task';
 import { motionOf } from './task';
 
 /** Where adjustments begin: one motion for each branch. */
 export interface Starts {
   readonly motions: readonly Float64Array[];
   /** Unknowns to be held, where directions alone are known and so no scale. */
-  readonly held: readonly number[];
+  readonly held: readonly Held[];
 }
 
 /** Why there is none. */
@@ -77,7 +77,7 @@ export const findStarts = (task: Task, s: State): Starts | NoStart => {
   const magnitudes = magnitudesOf(task, s, free);
   const decided = magnitudeBranches(magnitudes, free.length);
   if (decided.length === 0) return 'no such magnitude';
-  const held: number[] = [];
+  const held: Held[] = [];
   const motions = decided.map((t) => {
     const q = Float64Array.from(base);
     free.forEach((z, k) => {
@@ -87,7 +87,7 @@ export const findStarts = (task: Task, s: State): Starts | NoStart => {
     return q;
   });
   directed.motions.forEach((d, k) => {
-    if (d.held >= 0 && decided.every((t) => t[still.length + k] === 0)) held.push(d.held);
+    if (d.held !== null && decided.every((t) => t[still.length + k] === 0)) held.push(d.held);
   });
   return { motions, held };
 };
@@ -135,7 +135,7 @@ interface ScaleFree {
   /** Rows (among the chosen) that belong to parts of which only directions are known. */
   readonly rows: ReadonlySet<number>;
   readonly unknowns: ReadonlySet<number>;
-  readonly motions: readonly { readonly motion: Float64Array; readonly held: number }[];
+  readonly motions: readonly { readonly motion: Float64Array; readonly held: Held | null }[];
 }
 
 /**
@@ -153,7 +153,7 @@ const scaleFree = (
 ): ScaleFree | 'only rest' => {
   const rows = new Set<number>();
   const unknowns = new Set<number>();
-  const motions: { motion: Float64Array; held: number }[] = [];
+  const motions: { motion: Float64Array; held: Held | null }[] = [];
   for (const part of partsOf(task)) {
     const owners = part.owners.filter((o) => o.known !== null && isDirectionOnly(o.known));
     if (owners.length === 0) continue;
@@ -171,7 +171,7 @@ const scaleFree = (
     });
     normalise(motion, owners, s);
     const exact = pivotedQr(restrict(a, own, at), task.tolerance).rank < at.length;
-    const held = exact ? -1 : at[indexOfLargest(found)];
+    const held = exact ? null : { unknown: at[indexOfLargest(found)], bodies: part.bodies };
     own.forEach((r) => rows.add(r));
     at.forEach((i) => unknowns.add(i));
     motions.push({ motion, held });

@@ -38,6 +38,12 @@ export interface LevelResult {
   readonly condition: number | null;
 }
 
+/** An unknown that stays as it starts, since only the scale of its bodies' motion is open. */
+export interface Held {
+  readonly unknown: number;
+  readonly bodies: readonly number[];
+}
+
 /** The part of a state that a level solves for. */
 export const motionOf = (task: Task, s: State): Float64Array =>
   task.equations.level === 'velocity' ? s.velocity : s.acceleration;

@@ -29,7 +29,7 @@ export const judge = (
   if (best === undefined) {
     const { rank, free } = linearRank(model, equations, tolerance);
     const still = new Float64Array(unknowns + 3);
-    const singular = isSingularPosition(model, equations, rank, still, tolerance);
+    const singular = isSingularPosition(model, equations, still, tolerance);
     const verdict: LevelVerdict = {
       ...common,
       status: singular ? 'singular' : 'contradictory',
@@ -44,7 +44,7 @@ export const judge = (
   const { rank, redundancy, chiSquared, condition, free, motion } = best;
   let status: MotionStatus = redundancy > 0 ? 'over-determined' : 'determined';
   if (free.length > 0)
-    status = isSingularPosition(model, equations, rank, motion, tolerance)
+    status = isSingularPosition(model, equations, motion, tolerance)
       ? 'singular'
       : 'under-determined';
   const pValue = redundancy > 0 ? chiSquaredPValue(chiSquared, redundancy) : null;

@@ -37,7 +37,7 @@ const compileScalar = (
   if ('body' in k)
     return { ...common, kind: 'angular', body: references.body(k.body, `${field}.body`) };
   const joint = joints.find((j) => j.id === k.joint);
-  const wanted = k.quantity.startsWith('link') ? ['link'] : ['path', 'gear'];
+  const wanted = k.quantity.startsWith('link') ? ['link'] : ['path', 'gear', 'wheel'];
   if (joint === undefined || !wanted.includes(joint.kind))
     throw new EngineError(
       'unknown-reference',

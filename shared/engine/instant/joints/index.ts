@@ -4,7 +4,7 @@ import { writeGear, writeGearSlide } from './gear';
 import { writeLink, writeLinkLength } from './link';
 import { writePath, writeSlide } from './path';
 import { writePin, writeWeld } from './pin';
-import { writeWheel } from './wheel';
+import { writeWheel, writeWheelSpeed } from './wheel';
 
 /** Scalar equations that the joint gives at a level. */
 export const jointEquations = (j: ModelJoint, level: Level): number => {
@@ -49,13 +49,16 @@ export const writeJoint = (
   }
 };
 
-/** Whether something slides, or changes its length, at the joint. */
-export const slides = (j: ModelJoint): boolean =>
-  j.kind === 'path' || j.kind === 'link' || j.kind === 'gear';
+/** Whether something slides or rolls along the joint, or changes its length. */
+export const slides = (j: ModelJoint): boolean => j.kind !== 'pin' && j.kind !== 'weld';
 
-/** One row: the rate of sliding or of the length as a function of the motion, right side without it. */
+/**
+ * One row: the rate of sliding, of rolling or of the length as a function of the motion, with the
+ * right side that a rate of zero would have.
+ */
 export const writeSlideRow = (
   j: ModelJoint,
+  ground: number,
   level: Level,
   s: State,
   rows: Rows,
@@ -64,4 +67,5 @@ export const writeSlideRow = (
   if (j.kind === 'path') writeSlide(j, level, s, rows, at);
   else if (j.kind === 'link') writeLinkLength(j, level, s, rows, at);
   else if (j.kind === 'gear') writeGearSlide(j, level, s, rows, at);
+  else if (j.kind === 'wheel') writeWheelSpeed(j, ground, level, s, rows, at);
 };
