@@ -45,7 +45,7 @@ export interface TraceOptions {
 }
 
 const usualWindow = 9;
-const leastWindow = 5;
+const leastWindow = 3;
 /** p-value under which a curve of second degree does not follow the points. */
 const bends = 0.01;
 const rounds = 20;
@@ -123,7 +123,7 @@ function fitWindow(points: readonly TracePoint[], foot: Vector): TraceTangent {
     origin = add(origin, rotate(heading, [0, local.values[0]]));
     heading += Math.atan(slope);
     origin = add(origin, scale(dot(subtract(foot, origin), unit(heading)), unit(heading)));
-    if (Math.abs(slope) < 1e-14) break;
+    if (round > 0 && Math.abs(slope) < 1e-14) break;
   }
   if (fit === null || local === null) throw new RangeError('no round was made');
   const across = local.covariance;
