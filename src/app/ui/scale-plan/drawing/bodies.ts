@@ -48,10 +48,10 @@ function below(sheet: Sheet, body: PlanBody): [number, number] {
   const corners = [...body.outline, ...body.points.map((point) => point.at)];
   return corners
     .map((corner) => onSheet(sheet, corner))
-    .reduce<[
-      number,
-      number,
-    ]>((lowest, corner) => (corner[1] > lowest[1] ? corner : lowest), [0, -Infinity]);
+    .reduce<[number, number]>(
+      (lowest, corner) => (corner[1] > lowest[1] ? corner : lowest),
+      [0, -Infinity],
+    );
 }
 
 export function drawGuides(
