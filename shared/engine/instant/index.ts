@@ -17,7 +17,8 @@ import { judge } from './verdict';
 
 export { relativeMotion, velocityOf } from './ask';
 export { workInstant } from './working/index';
-export type { Working, WorkingStep } from './working/working';
+export type * from './working/working';
+export type { AskedPoint, PointAnswer, RelativeMotion } from './ask';
 
 /** Above this, a small change of the poses changes the answer a thousand times as much. */
 const leaning = 1e3;
