@@ -16,6 +16,7 @@ export async function bundleTools(outDir) {
     outdir: outDir,
     outExtension: { '.js': '.mjs' },
     bundle: true,
+    alias: { debug: './scripts/silent-debug.cjs' },
     platform: 'node',
     target: 'node20',
     format: 'esm',

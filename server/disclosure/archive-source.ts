@@ -10,7 +10,7 @@ import { ReleaseRecord } from '../database/models/release';
 import { canonicalText, sha256Hex } from '../ledger/canonical';
 import { readPublicKeys } from '../ledger/signing-key';
 import type { Services } from '../services';
-import { documentSchemas } from './schemas';
+import { archiveSchemas } from './schemas';
 
 /**
  * Everything that the archive of a release is made of: the frozen snapshot, and by its word the
@@ -60,7 +60,7 @@ export async function loadArchiveSource(
     ),
     publicKeys: readPublicKeys(join(services.config.dataDir, 'keys')),
     computations: computations.map(({ hash, document }) => ({ hash, text: document })),
-    schemas: documentSchemas(),
+    schemas: archiveSchemas(),
     tools: {
       verify: await tool(services, 'verify'),
       recompute: await tool(services, 'recompute'),

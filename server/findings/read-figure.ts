@@ -1,14 +1,9 @@
-import type * as z from 'zod';
+import * as z from 'zod';
 import type { Figure, figureChoice } from '#shared/contracts/findings';
 import { findQuantity } from '#shared/engine/documents/motion-quantities';
-import {
-  reconstructionDocument,
-  type ReconstructionDocument,
-} from '#shared/engine/documents/reconstruction';
 import { motionOf } from '../archive/computation-text';
 import type { CaseScope } from '../cases/scope';
 import { ComputationRecord } from '../database/models/computation';
-import { ReconstructionRecord } from '../database/models/reconstruction';
 
 type Choice = z.output<typeof figureChoice>;
 
@@ -45,7 +40,7 @@ export async function readFigure(scope: CaseScope, choice: Choice): Promise<Figu
     title:
       titles[choice.quantity] +
       (solutions > 1 ? ` (solution ${choice.branch + 1} of ${solutions})` : ''),
-    pointName: nameOf(await documentOf(record), choice.body, point),
+    pointName: nameOf(record.document, choice.body, point),
     stationName: record.stationName,
     value: found.value,
     low: found.low,
@@ -53,16 +48,23 @@ export async function readFigure(scope: CaseScope, choice: Choice): Promise<Figu
   };
 }
 
-async function documentOf(record: ComputationRecord): Promise<ReconstructionDocument | null> {
-  const reconstruction = await ReconstructionRecord.findOne({
-    where: { id: record.reconstructionId, caseId: record.caseId },
-  });
-  return reconstruction && reconstructionDocument.parse(JSON.parse(reconstruction.document));
-}
+/** What the recorded input calls its bodies and points. */
+const named = z.object({
+  input: z.object({
+    bodies: z.array(
+      z.object({
+        id: z.string(),
+        name: z.string(),
+        points: z.array(z.object({ id: z.string(), name: z.string() })),
+      }),
+    ),
+  }),
+});
 
-/** "centre of gravity, car": as people call point and body; their keys where the names are gone. */
-function nameOf(document: ReconstructionDocument | null, bodyId: string, pointId: string | null) {
-  const body = document?.bodies.find(({ id }) => id === bodyId);
+/** "centre of gravity, car": as people call point and body; their keys where there are no names. */
+function nameOf(document: string, bodyId: string, pointId: string | null): string {
+  const { data } = named.safeParse(JSON.parse(document));
+  const body = data?.input.bodies.find(({ id }) => id === bodyId);
   const bodyName = body?.name ?? bodyId;
   if (pointId === null) return bodyName;
   return `${body?.points.find(({ id }) => id === pointId)?.name ?? pointId}, ${bodyName}`;

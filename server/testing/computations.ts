@@ -4,6 +4,14 @@ import { ComputationRecord } from '../database/models/computation';
 import { ReconstructionRecord } from '../database/models/reconstruction';
 import { canonicalText, sha256Hex } from '../ledger/canonical';
 
+const bodies = [
+  {
+    id: 'arm',
+    name: 'the arm',
+    points: [{ id: 'tip', name: 'tip', at: [2, 0], sigma: [0, 0] }],
+    outline: [],
+  },
+];
 const at = new Date('2026-11-20T08:00:00.000Z');
 
 /** An alternative with one body, and a computation of it whose result is given: no engine is needed. */
@@ -20,14 +28,7 @@ export async function recordTestComputation(
     assumption: 'The wheel did not slip.',
     document: JSON.stringify({
       format: 'centrode.reconstruction/1',
-      bodies: [
-        {
-          id: 'arm',
-          name: 'the arm',
-          points: [{ id: 'tip', name: 'tip', at: [2, 0], sigma: [0, 0] }],
-          outline: [],
-        },
-      ],
+      bodies,
       joints: [],
       stations: [],
     }),
@@ -38,8 +39,11 @@ export async function recordTestComputation(
   const document = canonicalText({
     format: 'centrode.computation/1',
     kind: 'station',
-    input: { sequence },
-    result: { motion },
+    engine: 'by hand',
+    input: { bodies },
+    options: { sequence },
+    seed: null,
+    result: { solution: motion },
   });
   await ComputationRecord.create({
     caseId,
