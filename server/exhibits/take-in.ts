@@ -1,10 +1,11 @@
 import type { Request } from 'express';
+import type { Transaction } from 'sequelize';
 import { v7 as newId } from 'uuid';
 import type { ExhibitFile } from '#shared/contracts/exhibits';
 import type { CaseScope } from '../cases/scope';
 import { lockExhibit } from '../custody/holding';
 import { withLedger } from '../custody/ledger';
-import { DerivativeRecord, ExhibitFileRecord } from '../database/models/exhibit';
+import { DerivativeRecord, ExhibitFileRecord, type ExhibitRecord } from '../database/models/exhibit';
 import { HttpProblem, conflict, unprocessable } from '../http/problems';
 import type { Services } from '../services';
 import { ContentChanged } from '../store/checked-read';
@@ -32,7 +33,8 @@ export async function takeIn(
   zone: string,
 ): Promise<ExhibitFile> {
   const upload = uploadedFile(request);
-  await exhibitOf(scope, exhibitId);
+  const exhibit = await exhibitOf(scope, exhibitId);
+  await mustBeNew(exhibit, upload.sha256);
   const seen = await services.inspector.inspect({ path: upload.path, name: upload.name });
   if ('refused' in seen) {
     await services.accessLog.record({
@@ -125,6 +127,16 @@ function record(
     );
     return id;
   });
+}
+
+/** Asked before anything is stored, and again under the lock. */
+async function mustBeNew(
+  { id: exhibitId, number }: ExhibitRecord,
+  sha256: string,
+  transaction?: Transaction,
+): Promise<void> {
+  const same = await ExhibitFileRecord.findOne({ where: { exhibitId, sha256 }, transaction });
+  if (same) throw conflict(`${number} holds the same content already, as "${same.name}".`);
 }
 
 async function publish(services: Services, upload: UploadedFile): Promise<Published> {

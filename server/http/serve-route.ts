@@ -68,10 +68,9 @@ async function answer(
     if (response.headersSent || endpoint.response === 'binary') return;
     send(endpoint, response, shape(endpoint, value));
   } catch (error) {
-    // The same key was answered by a request that ran at the same moment: give that answer.
-    if (key !== null && isDuplicateKey(error) && (await replay(account, key, digest, response))) {
-      return;
-    }
+    // The same act, sent twice at once, was done by the other request: give its answer, whatever
+    // stopped this one (its row under the same key, or that the act is done already).
+    if (key !== null && (await replay(account, key, digest, response))) return;
     throw error;
   }
 }
@@ -149,13 +148,4 @@ async function replay(
   }
   response.status(seen.status).json(JSON.parse(seen.answer));
   return true;
-}
-
-function isDuplicateKey(error: unknown): boolean {
-  return (
-    error instanceof Error &&
-    error.name === 'SequelizeUniqueConstraintError' &&
-    error.message.length > 0 &&
-    JSON.stringify((error as { fields?: unknown }).fields ?? '').includes('PRIMARY')
-  );
 }
