@@ -40,7 +40,6 @@ import { ChangeDetectionStrategy, Component } from '@angular/core';
         <path d="m-6-6 12 12m0-12-12 12" transform="translate(624 252)" />
         <path d="m-6-6 12 12m0-12-12 12" transform="translate(470 474)" />
       </g>
-      <path class="scale" d="M40 40v8h120v-8m-60 4v4" />
     </svg>
   `,
   styles: `
@@ -98,10 +97,6 @@ import { ChangeDetectionStrategy, Component } from '@angular/core';
     .mark {
       stroke: var(--chalk);
       stroke-width: 2;
-    }
-    .scale {
-      stroke: var(--ink);
-      stroke-width: 1.3;
     }
   `,
   changeDetection: ChangeDetectionStrategy.OnPush,

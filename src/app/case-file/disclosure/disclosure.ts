@@ -13,7 +13,6 @@ import { Api } from '../../core/api/api';
 import { ApiProblem } from '../../core/api/api-problem';
 import type { HoldsWork } from '../../core/unsaved-work';
 import { EmptyState } from '../../ui/empty-state/empty-state';
-import { Icon } from '../../ui/icon/icon';
 import { ProblemMessage } from '../../ui/problem-message/problem-message';
 import { CurrentCase } from '../current-case';
 import { ReleaseCard } from './release-card';
@@ -25,7 +24,7 @@ const lookAgainAfter = 2000;
 /** What was released to whom, in which archive, and who opened it. */
 @Component({
   selector: 'app-disclosure',
-  imports: [EmptyState, Icon, MatButton, ProblemMessage, ReleaseCard, ReleaseForm],
+  imports: [EmptyState, MatButton, ProblemMessage, ReleaseCard, ReleaseForm],
   templateUrl: './disclosure.html',
   styleUrl: './disclosure.scss',
   changeDetection: ChangeDetectionStrategy.OnPush,
