@@ -63,9 +63,7 @@ describe('circle through measured points', () => {
         });
         for (const method of ['kasa', 'pratt', 'taubin'] as const)
           radii[method].push(algebraicCircle(noisy, method).radius);
-        radii['geo'].push(
-          fitCircle(noisy.map((at) => ({ at, covariance: round(sigma) }))).radius,
-        );
+        radii['geo'].push(fitCircle(noisy.map((at) => ({ at, covariance: round(sigma) }))).radius);
       }
       for (const [method, values] of Object.entries(radii)) {
         const [mean, deviation, median] = check.expected[`${method}_mean_sd_median`];

@@ -198,9 +198,16 @@ export const motionProblem = z.strictObject({
   bodies: z.array(body),
   joints: z.array(jointDocument),
   knowns: z.array(known),
-  /** Joint covariance of several poses, in the order x, y, heading of each body in turn. */
+  /**
+   * Joint covariance of several poses, in the order x, y, heading of each body in turn; then of
+   * points that were fitted with them, x and y of each, which carry no uncertainty of their own.
+   */
   poseCovariance: z
-    .strictObject({ bodies: z.array(id), matrix: z.array(z.array(number)) })
+    .strictObject({
+      bodies: z.array(id),
+      points: z.array(pointReference).optional(),
+      matrix: z.array(z.array(number)),
+    })
     .optional(),
   /** Largest gap between joined points that is still taken as closed, m. */
   closureTolerance: z.number().positive().optional(),

@@ -54,8 +54,15 @@ export const priorResidual = z.object({
 export const poseSolution = z.object({
   format: z.literal('centrode.pose-solution/1'),
   bodies: z.record(z.string(), fittedBody),
-  /** Joint covariance of all poses, in the order x, y, heading of each body in turn. */
-  covariance: z.object({ bodies: z.array(z.string()), matrix: z.array(z.array(number)) }),
+  /**
+   * Joint covariance of all poses, in the order x, y, heading of each body in turn; then, if there
+   * are any, of the points with uncertain dimensions, x and y of each in the frame of its body.
+   */
+  covariance: z.object({
+    bodies: z.array(z.string()),
+    points: z.array(z.object({ body: z.string(), point: z.string() })).optional(),
+    matrix: z.array(z.array(number)),
+  }),
   /** Every named point of every body, by `body.point`. */
   points: z.record(z.string(), fittedPoint),
   /** Uncertain dimensions after the fit, by `body.point`, in the frame of the body. */

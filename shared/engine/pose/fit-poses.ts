@@ -85,19 +85,31 @@ const scenePose = (found: Fit, slot: BodySlot, x: Float64Array): Pose => {
   return { x: pose.x, y: pose.y, heading: wrap(pose.heading) };
 };
 
-/** Covariance of x, y, heading of every body in turn. */
+/** Covariance of x, y, heading of every body in turn, then of the uncertain points. */
 function poseCovariances(found: Fit): PoseSolution['covariance'] {
   const slots = [...found.layout.bodies.values()];
-  const unknowns = slots.flatMap(({ index, arm }) => [
+  const points: { body: string; point: string }[] = [];
+  const unknowns: { at: number | null; unit: number }[] = slots.flatMap(({ index, arm }) => [
     { at: index, unit: 1 },
     { at: index + 1, unit: 1 },
     { at: index + 2, unit: arm },
   ]);
+  for (const slot of slots)
+    for (const [name, { index }] of slot.points) {
+      if (index.every((at) => at === null)) continue;
+      points.push({ body: slot.id, point: name });
+      unknowns.push(...index.map((at) => ({ at, unit: 1 })));
+    }
   const { size } = found.layout;
   return {
     bodies: slots.map(({ id }) => id),
+    ...(points.length > 0 && { points }),
     matrix: unknowns.map((a) =>
-      unknowns.map((b) => found.covariance[a.at * size + b.at] / (a.unit * b.unit)),
+      unknowns.map((b) =>
+        a.at === null || b.at === null
+          ? 0
+          : found.covariance[a.at * size + b.at] / (a.unit * b.unit),
+      ),
     ),
   };
 }

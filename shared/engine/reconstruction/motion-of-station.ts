@@ -17,10 +17,9 @@ export interface StationMotion {
  * The motion problem of a station: fitted poses with their joint covariance, joints that act, what
  * is stated of the motion, and the tangents of traces as directions of the points that made them.
  *
- * Two correlations are left out, both small: that between a heading and a tangent that come from
- * marks of the same trace (a heading takes the places of single marks, a tangent the differences
- * of neighbouring ones, so that they share little), and that between a fitted pose and the fitted
- * dimensions of its body.
+ * One correlation is left out: that between a heading and a tangent that come from marks of the
+ * same trace. A heading takes the places of single marks, a tangent the differences of neighbouring
+ * ones, so that they share little.
  */
 export function motionOfStation(
   { bodies, joints, station, marks }: StationProblem,
@@ -71,12 +70,15 @@ export function motionOfStation(
   };
 }
 
-/** Dimensions as the fit left them, since it is those that close the joints. */
+/**
+ * Dimensions as the fit left them, since it is those that close the joints; their uncertainty is in
+ * the joint covariance, with its correlation to the poses.
+ */
 function motionPoints(body: ReconstructionBody, pose: PoseSolution): Record<string, BodyPoint> {
   return Object.fromEntries(
     body.points.map(({ id, at }) => {
       const key = `${body.id}.${id}`;
-      return [id, Object.hasOwn(pose.dimensions, key) ? pose.dimensions[key] : at];
+      return [id, Object.hasOwn(pose.dimensions, key) ? pose.dimensions[key].at : at];
     }),
   );
 }

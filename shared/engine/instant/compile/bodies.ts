@@ -71,7 +71,7 @@ export const compileBodies = (
       points,
     };
   });
-  poseNoises(problem, centroids, layout);
+  poseNoises(problem, bodies, centroids, layout);
   return { bodies, centre };
 };
 
@@ -89,19 +89,25 @@ const poseDirections = (body: MotionBody, i: number, centroid: Vector): Noise['e
   ];
 };
 
-const poseNoises = (problem: MotionProblem, centroids: readonly Vector[], layout: Layout): void => {
+const poseNoises = (
+  problem: MotionProblem,
+  bodies: readonly ModelBody[],
+  centroids: readonly Vector[],
+  layout: Layout,
+): void => {
   const together = problem.poseCovariance;
   const joined = new Set(together?.bodies ?? []);
   if (together !== undefined) {
-    const size = 3 * together.bodies.length;
+    const points = together.points ?? [];
+    const size = 3 * together.bodies.length + 2 * points.length;
     const { matrix } = together;
     if (matrix.length !== size || matrix.some((row) => row.length !== size))
       throw new EngineError(
         'not-a-covariance',
         'poseCovariance.matrix',
-        `poseCovariance.matrix must have ${size} rows and columns, three for each body.`,
+        `poseCovariance.matrix must have ${size} rows and columns, three for each body and two for each point.`,
       );
-    const directions = together.bodies.flatMap((id) => {
+    const poses = together.bodies.flatMap((id) => {
       const i = problem.bodies.findIndex((b) => b.id === id);
       if (i < 0)
         throw new EngineError(
@@ -111,8 +117,20 @@ const poseNoises = (problem: MotionProblem, centroids: readonly Vector[], layout
         );
       return poseDirections(problem.bodies[i], i, centroids[i]);
     });
+    const dimensions = points.flatMap(({ body, point }) => {
+      const place = bodies.find((b) => b.id === body)?.points.get(point);
+      if (place === undefined)
+        throw new EngineError(
+          'unknown-reference',
+          'poseCovariance.points',
+          `There is no point ${body}.${point}.`,
+        );
+      return [[{ at: place.at, amount: 1 }], [{ at: place.at + 1, amount: 1 }]];
+    });
     const source = { kind: 'pose', id: together.bodies.join(', ') } as const;
-    layout.noises.push(...noisesOf(source, directions, fromRows(matrix), 'poseCovariance.matrix'));
+    layout.noises.push(
+      ...noisesOf(source, [...poses, ...dimensions], fromRows(matrix), 'poseCovariance.matrix'),
+    );
   }
   problem.bodies.forEach((b, i) => {
     if (b.poseCovariance === undefined || joined.has(b.id)) return;
