@@ -143,8 +143,8 @@ describe('importing a survey', () => {
     );
     expect(wrong.body.errors[0].field).toBe('mapping.x');
     expect(wrong.body.errors[0].message).toMatch(/no column "Easting"/);
-    const picture = await survey(test, Buffer.from([0x89, 0x50, 0x4e, 0x47, 0, 1, 2, 3, 255]));
-    await importing(test, picture).expect(422);
+    const bytes = await survey(test, Buffer.from([0, 1, 2, 3, 255]), 'dump.bin');
+    await importing(test, bytes).expect(422);
   });
 
   it('when the file or the case is not open to somebody, then it does not exist', async () => {

@@ -3,13 +3,19 @@ import { v7 as newId } from 'uuid';
 import type * as z from 'zod';
 import type { RejectedRow, SurveyImport, importSurvey } from '#shared/contracts/survey';
 import { SurveyFileProblem } from '#shared/survey/csv-rows';
-import { readSurveyCsv, type SurveyReading, type SurveyRow } from '#shared/survey/read-survey-csv';
+import {
+  apartFromStanding,
+  readSurveyCsv,
+  type SurveyReading,
+  type SurveyRow,
+} from '#shared/survey/read-survey-csv';
 import type { CaseScope } from '../cases/scope';
 import { CaseRecord } from '../database/models/case';
+import { ExhibitRecord } from '../database/models/exhibit';
 import { MarkRecord, SurveyImportRecord } from '../database/models/mark';
-import { conflict, HttpProblem, unprocessable } from '../http/problems';
+import { fileOf, readTextOf } from '../exhibits/serve-file';
+import { conflict, HttpProblem, notFound, unprocessable } from '../http/problems';
 import type { Services } from '../services';
-import { readExhibitText } from './exhibit-text';
 import { rowOf } from './marks';
 import { presentImport } from './presenter';
 
@@ -25,11 +31,12 @@ export async function importMarks(
   request: Request,
   remember: (transaction: Transaction, answer: SurveyImport) => Promise<void>,
 ): Promise<SurveyImport> {
-  const file = await readExhibitText(services, scope, request.exhibitId, request.fileId);
+  const file = await surveyFile(services, scope, request);
   const reading = read(file.text, request);
   const answer = await once(() =>
     services.sequelize.transaction(async (transaction) => {
-      const { rows, rejected } = await apartFromStanding(scope, reading, request, transaction);
+      const standing = await lockLabels(scope, transaction);
+      const { rows, rejected } = apartFromStanding(reading, standing, request.mapping);
       refuseUseless(rows, rejected, request.strict);
       const record = await SurveyImportRecord.create(
         {
@@ -74,6 +81,18 @@ export async function importMarks(
   return answer;
 }
 
+async function surveyFile(
+  services: Services,
+  scope: CaseScope,
+  { exhibitId, fileId }: Request,
+): Promise<{ exhibitNumber: string; name: string; text: string }> {
+  const file = await fileOf(scope, exhibitId, fileId);
+  const exhibit = await ExhibitRecord.findByPk(exhibitId, { attributes: ['number'] });
+  if (!exhibit) throw notFound('This exhibit');
+  const { name, text } = await readTextOf(services, file);
+  return { exhibitNumber: exhibit.number, name, text };
+}
+
 function read(text: string, request: Request): SurveyReading {
   try {
     return readSurveyCsv(text, request.mapping);
@@ -84,13 +103,8 @@ function read(text: string, request: Request): SurveyReading {
   }
 }
 
-/** Rows whose label stands in the case already are rejected too. */
-async function apartFromStanding(
-  scope: CaseScope,
-  reading: SurveyReading,
-  request: Request,
-  transaction: Transaction,
-): Promise<{ rows: SurveyRow[]; rejected: RejectedRow[] }> {
+/** Labels of the case's standing marks; other imports wait until the transaction ends. */
+async function lockLabels(scope: CaseScope, transaction: Transaction): Promise<Set<string>> {
   // Locked so that the same file imported twice at one moment is taken in once.
   await CaseRecord.findByPk(scope.caseId, { transaction, lock: transaction.LOCK.UPDATE });
   const standing = await MarkRecord.findAll({
@@ -99,19 +113,7 @@ async function apartFromStanding(
     raw: true,
     transaction,
   });
-  const labels = new Set(standing.map((mark) => mark.label));
-  const rows = reading.rows.filter((row) => !labels.has(row.entry.label));
-  const known = reading.rows.filter((row) => labels.has(row.entry.label));
-  const rejected = [
-    ...reading.rejected,
-    ...known.map(({ row, raw, entry }) => ({
-      row,
-      raw,
-      field: request.mapping.label,
-      message: `a mark of the case has the label "${entry.label}" already`,
-    })),
-  ];
-  return { rows, rejected: rejected.sort((a, b) => a.row - b.row) };
+  return new Set(standing.map((mark) => mark.label));
 }
 
 function refuseUseless(

@@ -1,5 +1,5 @@
 import { describe, expect, it } from '@jest/globals';
-import { guessMapping } from './guess-mapping';
+import { codesIn, guessMapping } from './guess-mapping';
 
 describe('the guess of how a survey file is read', () => {
   it('knows columns and units from the header', () => {
@@ -70,6 +70,14 @@ describe('the guess of how a survey file is read', () => {
       { code: 'K7', count: 1, kind: null },
       { code: '', count: 1, kind: null },
     ]);
+  });
+
+  it('can be made for another delimiter and another column of codes', () => {
+    const text = 'Point;E [m];N [m];Layer\n1;2;3;gouge\n2;3;4;gouge\n';
+    expect(guessMapping(text, ';').headers).toHaveLength(4);
+    expect(() => guessMapping(text, ',')).toThrow(/no columns/);
+    expect(codesIn(text, ';', 'Layer')).toEqual([{ code: 'gouge', count: 2, kind: 'gouge' }]);
+    expect(codesIn(text, ';', 'Nothing')).toEqual([]);
   });
 
   it('is refused for what has no header or no columns', () => {

@@ -75,8 +75,10 @@ const codeKinds: Record<string, MarkKind> = {
  * guessed: numbers whose only sign is a comma, and lengths without a stated unit, become questions.
  * @throws SurveyFileProblem when the file is no delimited text with a header
  */
-export function guessMapping(text: string): MappingGuess {
-  const delimiter = delimiterOf(text);
+export function guessMapping(
+  text: string,
+  delimiter: SurveyMapping['delimiter'] = delimiterOf(text),
+): MappingGuess {
   const [header, ...body] = csvRows(text, delimiter);
   const headers = header.cells;
   if (headers.length < 3) {
@@ -122,6 +124,17 @@ export function guessMapping(text: string): MappingGuess {
     codes: codesOf(cellsOf(columns.code)),
     questions,
   };
+}
+
+/** Every code in a column, with its kind where its name says it. */
+export function codesIn(
+  text: string,
+  delimiter: SurveyMapping['delimiter'],
+  column: string,
+): MappingGuess['codes'] {
+  const [header, ...body] = csvRows(text, delimiter);
+  const at = header.cells.indexOf(column);
+  return at < 0 ? [] : codesOf(body.map((row) => row.cells[at] ?? ''));
 }
 
 /** The sign that divides the header into the most columns, as long as the rows agree with it. */

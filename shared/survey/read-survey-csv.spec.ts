@@ -3,7 +3,7 @@ import fc from 'fast-check';
 import Papa from 'papaparse';
 import type { SurveyMapping } from '#shared/contracts/survey';
 import { SurveyFileProblem } from './csv-rows';
-import { readSurveyCsv } from './read-survey-csv';
+import { apartFromStanding, readSurveyCsv } from './read-survey-csv';
 
 const mapping: SurveyMapping = {
   delimiter: ',',
@@ -121,6 +121,18 @@ describe('a survey file', () => {
     expect(rejected).toMatchObject([
       { row: 3, field: 'Point', message: 'the label "7" stands already in row 2' },
     ]);
+  });
+
+  it('is told apart from the marks that stand in the case already', () => {
+    const reading = read('7,1,2,5,TM,,,\n8,x,4,5,TM,,,\n9,3,4,5,TM,,,\n');
+    expect(apartFromStanding(reading, new Set(['1']), mapping)).toBe(reading);
+    expect(apartFromStanding(reading, new Set(['7']), mapping)).toMatchObject({
+      rows: [{ row: 4 }],
+      rejected: [
+        { row: 2, field: 'Point', message: 'a mark of the case has the label "7" already' },
+        { row: 3 },
+      ],
+    });
   });
 
   it('rejects what an open quotation mark swallows, and keeps a bounded piece of it', () => {

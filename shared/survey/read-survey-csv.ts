@@ -65,6 +65,27 @@ export function readSurveyCsv(text: string, mapping: SurveyMapping): SurveyReadi
   };
 }
 
+/** The same reading, the rows whose label a standing mark of the case has already rejected too. */
+export function apartFromStanding(
+  reading: SurveyReading,
+  standing: ReadonlySet<string>,
+  mapping: SurveyMapping,
+): SurveyReading {
+  const known = reading.rows.filter((row) => standing.has(row.entry.label));
+  if (known.length === 0) return reading;
+  const rejected = known.map(({ row, raw, entry }) => ({
+    row,
+    raw,
+    field: mapping.label,
+    message: `a mark of the case has the label "${entry.label}" already`,
+  }));
+  return {
+    ...reading,
+    rows: reading.rows.filter((row) => !standing.has(row.entry.label)),
+    rejected: [...reading.rejected, ...rejected].sort((a, b) => a.row - b.row),
+  };
+}
+
 const columnFields = [
   'label',
   'x',
