@@ -1,6 +1,6 @@
 import { createHash } from 'node:crypto';
 import { createWriteStream } from 'node:fs';
-import { Transform } from 'node:stream';
+import { PassThrough } from 'node:stream';
 import { pipeline } from 'node:stream/promises';
 import { ZipArchive } from 'archiver';
 import type { BagEntry } from './entry';
@@ -16,28 +16,30 @@ export class ArchiveMismatch extends Error {
   }
 }
 
-/** Passes the bytes on and fails at the end unless they are those of the record. */
-class Checked extends Transform {
+/** Up to this size a file is read whole: thousands of small ones then cost a fraction. */
+const smallFile = 1 << 20;
+
+/** Compares bytes as they come with what their record says. */
+class Check {
   private size = 0;
   private readonly hash = createHash('sha256');
 
-  constructor(private readonly entry: BagEntry) {
-    super({ highWaterMark: 1 << 20 });
+  constructor(private readonly entry: BagEntry) {}
+
+  add(piece: Buffer): void {
+    this.size += piece.length;
+    this.hash.update(piece);
   }
 
-  override _transform(chunk: Buffer, _: string, done: (error: null, chunk: Buffer) => void): void {
-    this.size += chunk.length;
-    this.hash.update(chunk);
-    done(null, chunk);
-  }
-
-  override _flush(done: (error: Error | null) => void): void {
+  /** @throws ArchiveMismatch */
+  end(): void {
     const { path, size, sha256 } = this.entry;
     if (this.size !== size) {
-      done(new ArchiveMismatch(path, `has ${this.size} bytes, its record says ${size}`));
-    } else if (this.hash.digest('hex') !== sha256) {
-      done(new ArchiveMismatch(path, 'is not the file that its record says (SHA-256 differs)'));
-    } else done(null);
+      throw new ArchiveMismatch(path, `has ${this.size} bytes, its record says ${size}`);
+    }
+    if (this.hash.digest('hex') !== sha256) {
+      throw new ArchiveMismatch(path, 'is not the file that its record says (SHA-256 differs)');
+    }
   }
 }
 
@@ -103,9 +105,32 @@ export async function writeZip(
 }
 
 async function appendEntry(zip: ZipArchive, entry: BagEntry, options: ZipOptions): Promise<void> {
-  const checked = new Checked(entry);
+  const data = { name: `${options.folder}/${entry.path}`, date: options.date, mode: 0o644 };
   const added = new Promise<void>((resolve) => zip.once('entry', () => resolve()));
-  zip.append(checked, { name: `${options.folder}/${entry.path}`, date: options.date, mode: 0o644 });
-  await pipeline(entry.open(), checked, { signal: options.signal });
+  const check = new Check(entry);
+  if (entry.size <= smallFile) {
+    const pieces: Buffer[] = [];
+    for await (const piece of entry.open()) {
+      check.add(piece as Buffer);
+      pieces.push(piece as Buffer);
+    }
+    check.end();
+    zip.append(Buffer.concat(pieces), data);
+  } else {
+    const passing = new PassThrough({ highWaterMark: 1 << 20 });
+    zip.append(passing, data);
+    await pipeline(
+      entry.open(),
+      async function* (source: AsyncIterable<Buffer>) {
+        for await (const piece of source) {
+          check.add(piece);
+          yield piece;
+        }
+        check.end();
+      },
+      passing,
+      { signal: options.signal },
+    );
+  }
   await added;
 }

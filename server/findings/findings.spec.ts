@@ -1,8 +1,10 @@
-import { afterAll, beforeAll, describe, expect, it } from '@jest/globals';
+import { afterAll, beforeAll, describe, expect, it, jest } from '@jest/globals';
 import { handSolution } from '../../test/fixtures/archive';
 import { startTestApi, type TestApi } from '../testing/api';
 import { recordTestComputation } from '../testing/computations';
 import { assignTo, openTestCase, type TestCase } from '../testing/factories';
+
+jest.setTimeout(30_000);
 
 let api: TestApi;
 let opened: TestCase;

@@ -1,7 +1,9 @@
-import { afterAll, beforeAll, describe, expect, it } from '@jest/globals';
+import { afterAll, beforeAll, describe, expect, it, jest } from '@jest/globals';
 import { QueryTypes } from 'sequelize';
 import { startTestApi, type TestApi } from '../testing/api';
 import { assignTo, openTestCase, type TestCase } from '../testing/factories';
+
+jest.setTimeout(30_000);
 
 let api: TestApi;
 let opened: TestCase;

@@ -4,13 +4,15 @@ import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { Readable } from 'node:stream';
 import { promisify } from 'node:util';
-import { afterAll, beforeAll, describe, expect, it } from '@jest/globals';
+import { afterAll, beforeAll, describe, expect, it, jest } from '@jest/globals';
 import type { ArchiveSource } from '#server/archive/archive-source';
 import { buildArchive } from '#server/archive/build-archive';
 import { verifyBag } from '#server/archive/tools/verify-bag';
 import { archiveFixture } from '../fixtures/archive';
 import { armComputations } from '../fixtures/computations';
 import { bundleTools } from '../../scripts/bundle-tools.mjs';
+
+jest.setTimeout(60_000);
 
 const run = promisify(execFile);
 const packages: Record<string, string> = {
@@ -216,6 +218,22 @@ describe('what the archive holds', () => {
     }
   });
 
+  it('gives marks as points and traces as lines in their order', async () => {
+    const { features } = JSON.parse(await read('survey/marks.geojson'));
+    const [trace, ...points] = features;
+    expect(trace.geometry).toEqual({
+      type: 'LineString',
+      coordinates: [
+        [0, 0],
+        [4.2, 0.35],
+        [8.1, 1.4],
+      ],
+    });
+    expect(
+      points.map((point: { properties: { label: string } }) => point.properties.label),
+    ).toEqual(['T1-01', 'T1-02', 'T1-03', '=G1', 'R1']);
+  });
+
   it('draws the plan to scale', async () => {
     const plan = await read('survey/plan.svg');
     expect(plan).toContain('width="420mm" height="297mm" viewBox="0 0 420 297"');
@@ -224,6 +242,8 @@ describe('what the archive holds', () => {
     const at = [...plan.matchAll(/translate\(([\d.]+) ([\d.]+)\)/g)].map(([, x, y]) => [+x, +y]);
     expect(at[4][0] - at[0][0]).toBeCloseTo(315, 1);
     expect(at[0][1] - at[4][1]).toBeCloseTo(67.5, 1);
+    // +x bears 60°, so north lies 60° to the left of it: 30° to the right of straight up.
+    expect(plan).toContain('transform="rotate(30.000)"');
   });
 });
 
@@ -323,7 +343,7 @@ describe('one flipped bit', () => {
     }
     expect(missed).toEqual([]);
     expect((await verifyBag(copy)).findings).toEqual([]);
-  }, 120_000);
+  }, 300_000);
 });
 
 describe('a bag made anew around a change, with manifests that fit', () => {
