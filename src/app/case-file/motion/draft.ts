@@ -24,6 +24,8 @@ export class Draft {
   private readonly now = signal<DraftContent | null>(null);
   private readonly before = signal<readonly DraftContent[]>([]);
   private readonly after = signal<readonly DraftContent[]>([]);
+  /** The thing that the last step changed: what is typed into one field is one step. */
+  private lastThing: string | null = null;
 
   /** The version on the server that this draft began from. */
   readonly base = this.saved.asReadonly();
@@ -51,6 +53,7 @@ export class Draft {
     this.now.set(contentOf(reconstruction));
     this.before.set([]);
     this.after.set([]);
+    this.lastThing = null;
   }
 
   close(): void {
@@ -63,19 +66,26 @@ export class Draft {
     this.saved.set(reconstruction);
   }
 
-  change(content: Partial<DraftContent>): void {
+  /** Changes that name the same `thing` one after another are one step. */
+  change(content: Partial<DraftContent>, thing: string | null = null): void {
     const now = this.now();
     if (now === null) return;
     const next = { ...now, ...content };
     if (same(next, now)) return;
-    this.before.update((steps) => [...steps.slice(-mostSteps + 1), now]);
+    if (thing === null || thing !== this.lastThing || this.after().length > 0) {
+      this.before.update((steps) => [...steps.slice(-mostSteps + 1), now]);
+    }
+    this.lastThing = thing;
     this.after.set([]);
     this.now.set(next);
   }
 
-  edit(change: (document: ReconstructionDocument) => ReconstructionDocument): void {
+  edit(
+    change: (document: ReconstructionDocument) => ReconstructionDocument,
+    thing: string | null = null,
+  ): void {
     const document = this.document();
-    if (document !== null) this.change({ document: change(document) });
+    if (document !== null) this.change({ document: change(document) }, thing);
   }
 
   undo(): void {
@@ -89,6 +99,7 @@ export class Draft {
   private step(from: typeof this.before, to: typeof this.before): void {
     const now = this.now();
     const target = from().at(-1);
+    this.lastThing = null;
     if (now === null || target === undefined) return;
     from.update((steps) => steps.slice(0, -1));
     to.update((steps) => [...steps, now]);

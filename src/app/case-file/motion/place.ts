@@ -22,6 +22,8 @@ export interface PlaceParts {
   /** The panel that is open, and what is chosen in it. */
   readonly panel?: PanelName | null;
   readonly item?: string | null;
+  /** The selected mark. */
+  readonly mark?: string | null;
   /** A second point, for the relative motion. */
   readonly from?: string | null;
   readonly normal?: string | null;
@@ -41,6 +43,7 @@ export class Place {
   readonly station = this.part('station');
   readonly point = this.part('point');
   readonly item = this.part('item');
+  readonly mark = this.part('mark');
   readonly from = this.part('from');
   readonly normal = this.part('normal');
   readonly computation = this.part('computation');

@@ -1,53 +1,38 @@
-/** A vector of a polygon: it begins where the one named in `after` ends, or at the pole. */
-export interface PolygonVector {
-  readonly id: string;
-  /** Components along scene x and y, in the unit of the polygon. */
-  readonly value: readonly [number, number];
+/** An arrow of a polygon; places are in the unit of the drawing, x and y along the scene's axes. */
+export interface PolygonArrow {
   readonly kind: 'velocity' | 'relative' | 'acceleration';
   /** As it stands beside the arrow: a letter and its index ("v", "LR/G"). */
   readonly symbol: string;
   readonly index: string;
-  readonly after: string | null;
+  readonly from: Place;
+  readonly to: Place;
+  /** The sum of the others, drawn stronger. */
+  readonly result: boolean;
 }
 
-export interface PlacedVector extends PolygonVector {
-  readonly from: readonly [number, number];
-  readonly to: readonly [number, number];
-}
-
-/** Puts every vector after the one that it follows; one that follows nothing begins at the pole. */
-export function placeVectors(vectors: readonly PolygonVector[]): PlacedVector[] {
-  const placed = new Map<string, PlacedVector>();
-  for (const vector of vectors) {
-    const from = (vector.after === null ? undefined : placed.get(vector.after))?.to ?? [0, 0];
-    const to = [from[0] + vector.value[0], from[1] + vector.value[1]] as const;
-    placed.set(vector.id, { ...vector, from, to });
-  }
-  return [...placed.values()];
-}
+export type Place = readonly [number, number];
 
 /** How a drawing of metres per second becomes one of pixels; y points up in the scene. */
 export interface Fit {
   readonly scale: number;
-  readonly toPage: (p: readonly [number, number]) => readonly [number, number];
+  readonly toPage: (p: Place) => Place;
 }
 
 /** The largest scale at which every end lies inside the frame, with a margin for the labels. */
-export function fitVectors(
-  placed: readonly PlacedVector[],
+export function fitArrows(
+  arrows: readonly Pick<PolygonArrow, 'from' | 'to'>[],
   width: number,
   height: number,
   margin: { readonly x: number; readonly y: number },
 ): Fit {
-  const ends = [[0, 0] as const, ...placed.flatMap((vector) => [vector.from, vector.to])];
+  const ends: Place[] = [[0, 0], ...arrows.flatMap((arrow) => [arrow.from, arrow.to])];
   const xs = ends.map((p) => p[0]);
   const ys = ends.map((p) => p[1]);
   const [left, right] = [Math.min(...xs), Math.max(...xs)];
   const [low, high] = [Math.min(...ys), Math.max(...ys)];
-  const room = { x: width - 2 * margin.x, y: height - 2 * margin.y };
   const scale = Math.min(
-    right > left ? room.x / (right - left) : Infinity,
-    high > low ? room.y / (high - low) : Infinity,
+    right > left ? (width - 2 * margin.x) / (right - left) : Infinity,
+    high > low ? (height - 2 * margin.y) / (high - low) : Infinity,
   );
   const used = Number.isFinite(scale) ? scale : 1;
   return {

@@ -1,0 +1,174 @@
+import { ChangeDetectionStrategy, Component, computed, inject, signal } from '@angular/core';
+import { MatCheckbox } from '@angular/material/checkbox';
+import { type PlanMove, type PlanPoint, tracesOf } from '../../ui/scale-plan/plan-content';
+import { ScalePlan } from '../../ui/scale-plan/scale-plan';
+import { CurrentCase } from '../current-case';
+import { Draft } from './draft';
+import { LiveAnswer } from './live-answer';
+import { Place } from './place';
+import {
+  nearestPoint,
+  planBodies,
+  planCentres,
+  planGuides,
+  planJoints,
+  planVectors,
+} from './plan-scene';
+import { Preferences } from './preferences';
+import { WhatIf } from './what-if';
+import { Workbench } from './workbench';
+
+/** How near a click must be to a named point of a body to mean it, m. */
+const reach = 0.4;
+
+/** The plan of the scene with the bodies at the station, their ghosts, vectors and centres. */
+@Component({
+  selector: 'app-plan-table',
+  imports: [MatCheckbox, ScalePlan],
+  template: `
+    @defer (on immediate) {
+      <ui-scale-plan
+        [label]="label()"
+        [marks]="live.marks()"
+        [traces]="traces()"
+        [bodies]="bodies()"
+        [vectors]="vectors()"
+        [centres]="centres()"
+        [guides]="guides()"
+        [joints]="joints()"
+        [selected]="place.mark()"
+        (selectedChange)="place.go({ mark: $event })"
+        [highlighted]="assigned()"
+        [xAxisBearing]="current.file().xAxisBearing"
+        [feet]="preferences.feet()"
+        [movable]="place.panel() === 'marks'"
+        (moved)="move($event)"
+        (pointed)="point($event)"
+      />
+    } @placeholder {
+      <p class="muted" role="status">Drawing the plan …</p>
+    }
+    <div class="shows screen-only">
+      <mat-checkbox [checked]="showsVelocity()" (change)="showsVelocity.set($event.checked)">
+        Velocities
+      </mat-checkbox>
+      <mat-checkbox
+        [checked]="showsAcceleration()"
+        (change)="showsAcceleration.set($event.checked)"
+      >
+        Accelerations
+      </mat-checkbox>
+    </div>
+  `,
+  styles: `
+    :host {
+      position: relative;
+      display: block;
+      height: 100%;
+    }
+    ui-scale-plan {
+      display: block;
+      width: 100%;
+      height: 100%;
+    }
+    p {
+      padding: 12px;
+    }
+    .shows {
+      position: absolute;
+      top: 4px;
+      right: 8px;
+      display: flex;
+      gap: 4px;
+      font-size: 13px;
+    }
+  `,
+  changeDetection: ChangeDetectionStrategy.OnPush,
+})
+export class PlanTable {
+  protected readonly current = inject(CurrentCase);
+  protected readonly live = inject(LiveAnswer);
+  protected readonly place = inject(Place);
+  protected readonly preferences = inject(Preferences);
+  private readonly draft = inject(Draft);
+  private readonly whatIf = inject(WhatIf);
+  private readonly workbench = inject(Workbench);
+
+  protected readonly showsVelocity = signal(true);
+  protected readonly showsAcceleration = signal(false);
+
+  protected readonly traces = computed(() => tracesOf(this.live.marks()));
+  protected readonly assigned = computed(
+    () => this.workbench.station()?.marks.map((one) => one.markId) ?? [],
+  );
+  protected readonly label = computed(() => {
+    const station = this.workbench.station();
+    return station === null
+      ? 'Plan of the marks'
+      : `Plan of the marks with the bodies at ${station.id} ${station.name}`;
+  });
+
+  private readonly scene = computed(() => {
+    const document = this.draft.document();
+    const station = this.workbench.station();
+    const data = this.live.data();
+    return document === null || station === null || data === null
+      ? null
+      : { document, station, data, poses: this.live.poses() };
+  });
+  /** Where several motions agree with the knowns, the plan shows the first; the sheet shows all. */
+  private readonly branch = computed(() => this.scene()?.data.answer.solution?.branches.at(0) ?? null);
+
+  protected readonly bodies = computed(() => {
+    const scene = this.scene();
+    if (scene === null) return [];
+    const { document, station, data, poses } = scene;
+    const ghosts = document.stations.flatMap((other) =>
+      other.id === station.id
+        ? []
+        : planBodies(document, other, data.others[other.id] ?? {}, true),
+    );
+    return [...ghosts, ...planBodies(document, station, poses, false)];
+  });
+  protected readonly vectors = computed(() => {
+    const scene = this.scene();
+    const branch = this.branch();
+    return scene === null || branch === null
+      ? []
+      : planVectors(scene.document, branch, {
+          velocity: this.showsVelocity(),
+          acceleration: this.showsAcceleration(),
+        });
+  });
+  protected readonly centres = computed(() => {
+    const scene = this.scene();
+    const branch = this.branch();
+    return scene === null || branch === null
+      ? []
+      : planCentres(scene.document, scene.station, branch, scene.poses);
+  });
+  protected readonly guides = computed(() => {
+    const scene = this.scene();
+    return scene === null
+      ? []
+      : planGuides(scene.document, scene.station, scene.poses);
+  });
+  protected readonly joints = computed(() => {
+    const scene = this.scene();
+    return scene === null
+      ? []
+      : planJoints(scene.document, scene.station, scene.poses);
+  });
+
+  protected move({ markId, at }: PlanMove): void {
+    this.whatIf.move(markId, at);
+  }
+
+  /** A click on a named point of a body asks for its motion. */
+  protected point(at: PlanPoint): void {
+    const scene = this.scene();
+    if (scene === null) return;
+    const key = nearestPoint(scene.document, scene.poses, at, reach);
+    if (key !== null) this.place.go({ point: key });
+  }
+}
