@@ -3,8 +3,8 @@ import type { Services } from '../services';
 import { sweep } from '../store/sweep';
 
 /** Clears what an earlier run left half taken in; called before the server listens. */
-export async function sweepStore(services: Services, olderThanMs?: number): Promise<void> {
-  const swept = await sweep(services.store, isRecorded, olderThanMs);
+export async function sweepStore(services: Services): Promise<void> {
+  const swept = await sweep(services.store, isRecorded);
   if (swept.unfinished + swept.unrecorded + swept.kept > 0) {
     services.log.warn(swept, 'leftovers of intakes that never ended were swept');
   }

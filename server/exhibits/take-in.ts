@@ -5,7 +5,11 @@ import type { ExhibitFile } from '#shared/contracts/exhibits';
 import type { CaseScope } from '../cases/scope';
 import { lockExhibit } from '../custody/holding';
 import { withLedger } from '../custody/ledger';
-import { DerivativeRecord, ExhibitFileRecord, type ExhibitRecord } from '../database/models/exhibit';
+import {
+  DerivativeRecord,
+  ExhibitFileRecord,
+  type ExhibitRecord,
+} from '../database/models/exhibit';
 import { HttpProblem, conflict, unprocessable } from '../http/problems';
 import type { Services } from '../services';
 import { ContentChanged } from '../store/checked-read';

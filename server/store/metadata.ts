@@ -30,7 +30,7 @@ export async function readMetadata(path: string): Promise<CameraMetadata | null>
   if (tags === null) return null;
   const text = (name: string): string | null => cleaned(tags[name]);
   const number = (name: string): number | null => finite(tags[name]);
-  return {
+  const metadata: CameraMetadata = {
     make: text('Make'),
     model: text('Model'),
     lens: text('LensModel'),
@@ -44,6 +44,9 @@ export async function readMetadata(path: string): Promise<CameraMetadata | null>
     software: text('Software') ?? text('CreatorTool'),
     editHistory: tags['History'] !== undefined || tags['DerivedFrom'] !== undefined,
   };
+  return Object.values(metadata).some((value) => value !== null && value !== false)
+    ? metadata
+    : null;
 }
 
 async function readTags(path: string): Promise<Record<string, unknown> | null> {

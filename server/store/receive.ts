@@ -1,7 +1,7 @@
-import { randomUUID } from 'node:crypto';
 import { open, rm } from 'node:fs/promises';
 import { join } from 'node:path';
 import { HashMeter, type FileDigest } from './digest';
+import { incomingName } from './owner-mark';
 
 /** A file that arrived whole, under a temporary name. */
 export interface Received extends FileDigest {
@@ -26,7 +26,7 @@ export async function receive(
   folder: string,
   mostBytes: number,
 ): Promise<Received> {
-  const path = join(folder, randomUUID());
+  const path = join(folder, incomingName());
   const file = await open(path, 'wx', 0o600);
   const meter = new HashMeter();
   const piece = Buffer.allocUnsafe(pieceSize);

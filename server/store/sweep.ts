@@ -1,9 +1,10 @@
 import { readdir, rm, stat } from 'node:fs/promises';
 import { join } from 'node:path';
 import { isMissing, type FileStore } from './file-store';
+import { isAbandoned } from './owner-mark';
 
-/** Younger leftovers may be an intake in another process that shares the store. */
-const hour = 60 * 60 * 1000;
+/** Younger files may belong to an intake in another process that shares the store. */
+const graceMs = 60 * 60 * 1000;
 
 export interface Swept {
   /** Arriving files that never became whole. */
@@ -21,17 +22,16 @@ export interface Swept {
 export async function sweep(
   store: FileStore,
   isRecorded: (sha256: string) => Promise<boolean>,
-  olderThanMs = hour,
 ): Promise<Swept> {
   const counts = { unfinished: 0, unrecorded: 0, kept: 0 };
   const names = await readdir(store.incomingDir);
-  const young = new Set<string>();
-  const old: string[] = [];
+  const inUse = new Set<string>();
+  const left: string[] = [];
   for (const name of names) {
-    if (await isOlder(join(store.incomingDir, name), olderThanMs)) old.push(name);
-    else young.add(contentOf(name));
+    if (isAbandoned(name) || (await isOld(join(store.incomingDir, name)))) left.push(name);
+    else inUse.add(contentOf(name));
   }
-  for (const name of old) {
+  for (const name of left) {
     const sha256 = contentOf(name);
     if (sha256 === '') {
       counts.unfinished += 1;
@@ -40,7 +40,7 @@ export async function sweep(
     } else {
       counts.unrecorded += 1;
       // Somebody else may be taking in the same content at this moment and rely on it.
-      if (!young.has(sha256)) await rm(store.pathOf(sha256), { force: true });
+      if (!inUse.has(sha256)) await rm(store.pathOf(sha256), { force: true });
     }
     await rm(join(store.incomingDir, name), { force: true });
   }
@@ -50,10 +50,10 @@ export async function sweep(
 /** The SHA-256 in the name of a published file; empty for one that is still arriving. */
 const contentOf = (name: string): string => /\.([0-9a-f]{64})$/.exec(name)?.[1] ?? '';
 
-async function isOlder(path: string, ms: number): Promise<boolean> {
+async function isOld(path: string): Promise<boolean> {
   try {
     // The time of the last change of the file's names counts, not that of its content.
-    return Date.now() - (await stat(path)).ctimeMs >= ms;
+    return Date.now() - (await stat(path)).ctimeMs >= graceMs;
   } catch (error) {
     if (isMissing(error)) return false;
     throw error;
