@@ -1,7 +1,10 @@
 import {
+  afterNextRender,
   ChangeDetectionStrategy,
   Component,
   computed,
+  ElementRef,
+  inject,
   input,
   linkedSignal,
   output,
@@ -27,7 +30,7 @@ export interface Difference<Key extends string = string> {
   templateUrl: './edit-conflict.html',
   styleUrl: './edit-conflict.scss',
   changeDetection: ChangeDetectionStrategy.OnPush,
-  host: { role: 'alert' },
+  host: { role: 'alert', tabindex: '-1' },
 })
 export class EditConflict<Key extends string> {
   /** What was edited: "brief". */
@@ -45,6 +48,12 @@ export class EditConflict<Key extends string> {
   protected readonly isComplete = computed(() =>
     this.differences().every((difference) => this.choices().has(difference.key)),
   );
+
+  constructor() {
+    const host = inject<ElementRef<HTMLElement>>(ElementRef).nativeElement;
+    // The form may be long: the question must not stand above what is in view.
+    afterNextRender(() => host.focus());
+  }
 
   protected choose(key: Key, mine: boolean): void {
     this.choices.update((choices) => new Map(choices).set(key, mine));

@@ -29,18 +29,19 @@ import { explain } from './terms';
     button {
       padding: 0;
       border: 0;
-      border-bottom: 1px dotted currentColor;
       border-radius: 0;
       background: none;
       color: inherit;
       font: inherit;
       line-height: inherit;
       text-align: inherit;
+      text-decoration: underline dotted 1px;
+      text-underline-offset: 4px;
       cursor: help;
     }
     @media print {
       button {
-        border-bottom: 0;
+        text-decoration: none;
       }
     }
   `,
