@@ -23,7 +23,7 @@ function table(head: readonly string[], rows: readonly (readonly string[])[], nu
   const row = (cells: readonly string[]) =>
     `<tr>${cells.map((cell, i) => `<td${place(i, cells.length)}>${cell}</td>`).join('')}</tr>`;
   return (
-    `<div class="scroll"><table><thead><tr>` +
+    `<div class="scroll" tabindex="0" role="region" aria-label="Table: ${head.join(', ')}"><table><thead><tr>` +
     head.map((name, i) => `<th scope="col"${place(i, head.length)}>${name}</th>`).join('') +
     `</tr></thead><tbody>${rows.map(row).join('\n')}</tbody></table></div>`
   );
@@ -197,7 +197,7 @@ export function readerPage(source: ArchiveSource, checkText: string): string {
 <style>${readerStyle()}</style>
 </head>
 <body>
-<div class="band"><span>Released to <strong>${e(summary.party)}</strong></span><span>Case ${e(summary.caseNumber)}, release ${summary.releaseNumber}</span><span>${e(summary.laboratory)}, ${day(summary.releasedAt)}</span></div>
+<header class="band"><span>Released to <strong>${e(summary.party)}</strong></span><span>Case ${e(summary.caseNumber)}, release ${summary.releaseNumber}</span><span>${e(summary.laboratory)}, ${day(summary.releasedAt)}</span></header>
 <main>
 <h1>${e(summary.title)}</h1>
 <p class="lead">Released by ${e(summary.laboratory)} to ${e(summary.party)} on ${minute(summary.releasedAt)}. Everything on this page stands in the files beside it and can be checked without the laboratory and without its programs.</p>
@@ -231,7 +231,7 @@ ${heading('check')}
 ${heading('cautions')}
 <div class="caution">${[summary.caution, ...cautions].map((text) => `<p>${e(text)}</p>`).join('\n')}</div>
 </main>
-<div class="band"><span>Released to <strong>${e(summary.party)}</strong>, release ${summary.releaseNumber} of ${day(summary.releasedAt)}</span></div>
+<footer class="band"><span>Released to <strong>${e(summary.party)}</strong>, release ${summary.releaseNumber} of ${day(summary.releasedAt)}</span></footer>
 </body>
 </html>
 `;

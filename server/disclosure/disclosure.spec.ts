@@ -269,7 +269,7 @@ describe('the archive of a release', () => {
     expect(checked.length).toBeGreaterThan(10);
     const recompute = join(folder, name, 'data/tools/recompute.mjs');
     const { stdout } = await run(process.execPath, [recompute], { env: {} });
-    expect(stdout).toContain('1 computations give the same result again, 0 another');
+    expect(stdout).toContain('Same result again: 1. Another result: 0. Not readable: 0.');
     const velocities = await readFile(join(folder, name, 'data/velocities.csv'), 'utf8');
     expect(velocities).toMatch(/,The arm made it,first mark,1,arm,tip,speed,m\/s,6/);
     const all = (await readdir(join(folder, name), { recursive: true })).join('\n');

@@ -2,9 +2,10 @@
 // Needs Node.js 20 or later and nothing else. It holds the whole engine that made the results.
 import { readFile, readdir, stat } from 'node:fs/promises';
 import { basename, join, resolve } from 'node:path';
+import { fileURLToPath } from 'node:url';
 import { recomputeReport } from '#shared/engine/computation/report';
 
-const given = resolve(process.argv[2] ?? resolve(import.meta.dirname, '../..'));
+const given = resolve(process.argv[2] ?? fileURLToPath(new URL('../..', import.meta.url)));
 
 async function filesOf(path: string): Promise<string[]> {
   if (!(await stat(path)).isDirectory()) return [path];
@@ -13,14 +14,14 @@ async function filesOf(path: string): Promise<string[]> {
   return names.sort().map((name) => join(folder, name));
 }
 
-const codes = { identical: 0, different: 0, unreadable: 0 };
+const outcomes = [0, 0, 0];
 for (const file of await filesOf(given)) {
   const { exitCode, lines } = recomputeReport(await readFile(file, 'utf8'), basename(file));
   console.log(lines.join('\n'));
-  codes[(['identical', 'different', 'unreadable'] as const)[exitCode]] += 1;
+  outcomes[exitCode] += 1;
 }
+const [same, different, unreadable] = outcomes;
 console.log(
-  `${codes.identical} computations give the same result again, ${codes.different} another, ` +
-    `${codes.unreadable} cannot be read.`,
+  `Same result again: ${same}. Another result: ${different}. Not readable: ${unreadable}.`,
 );
-process.exitCode = codes.unreadable > 0 ? 2 : codes.different > 0 ? 1 : 0;
+process.exitCode = unreadable > 0 ? 2 : different > 0 ? 1 : 0;
