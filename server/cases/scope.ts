@@ -1,7 +1,7 @@
 import { Op } from 'sequelize';
 import type { CaseRole } from '#shared/contracts/cases';
 import type { AccessRule, Endpoint } from '#shared/contracts/endpoint';
-import { AccountRecord } from '../database/models/account';
+import type { AccountRecord } from '../database/models/account';
 import { AssignmentRecord, CaseRecord } from '../database/models/case';
 import { forbidden, notFound, signInFirst } from '../http/problems';
 import type { Services } from '../services';

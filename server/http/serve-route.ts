@@ -46,8 +46,8 @@ async function answer(
   if (key !== null && (await replay(account, key, digest, response))) return;
 
   const call = {
-    ...response.locals['admitted'],
-    params: response.locals['params'],
+    ...(response.locals['admitted'] as object),
+    params: response.locals['params'] as unknown,
     query: parse(endpoint.query, request.query, 'query'),
     body: parse(endpoint.body, withoutBody(request) ? undefined : (body ?? {}), 'body'),
     services,

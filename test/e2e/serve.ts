@@ -10,6 +10,8 @@ const root = resolve(import.meta.dirname, '../..');
  * goes to the tests in CENTRODE_E2E_URL. The returned function stops it.
  */
 export default async function serve(): Promise<() => Promise<void>> {
+  // A server that runs already may be tried as well: CENTRODE_E2E_URL=http://127.0.0.1:4300.
+  if (process.env['CENTRODE_E2E_URL'] !== undefined) return () => Promise.resolve();
   const database = JSON.parse(process.env['CENTRODE_E2E_DATABASE'] ?? '{}') as {
     app?: string;
     owner?: string;

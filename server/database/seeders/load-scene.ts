@@ -9,9 +9,8 @@ import {
   type CaseFile,
   type incidentKinds,
 } from '#shared/contracts/cases';
-import { answerHandOver, handOver } from '#shared/contracts/custody';
+import { answerHandOver, handOver, recordCustody } from '#shared/contracts/custody';
 import {
-  readExhibit,
   registerExhibit,
   type Exhibit,
   type ExhibitFile,
@@ -55,7 +54,7 @@ export async function loadScene(
         collectedPlace: item.location,
         condition: item.condition,
         packaging: item.packaging ?? '',
-        sealNumber: item.seal ?? '',
+        sealNumber: firstSeal(scene, item.number, item.seal),
         sensitive: item.sensitivity === 'sensitive',
         parentNumber: item.parent === null ? null : (exhibits.get(item.parent)?.number ?? null),
       },
@@ -66,7 +65,7 @@ export async function loadScene(
       files.set(path, { exhibit, file: taken });
     }
   }
-  await handOverAsToldIn(scene, colleagues, caseId, exhibits, leadName);
+  await keepCustody(scene, colleagues, caseId, exhibits, leadName);
 
   const survey = files.get(scene.survey.file);
   if (!survey) throw new Error(`${scene.title}: the survey file is no exhibit`);
@@ -147,48 +146,53 @@ async function openSceneCase(scene: Scene, colleagues: Colleagues): Promise<Case
   return lead.call(readCase, { params: { caseId } });
 }
 
-/** Hand-overs of the sample, from whoever holds the item to the next, each accepted. */
-async function handOverAsToldIn(
+/**
+ * Custody as the sample tells it. The demo is entered on one day, so each event is recorded now and
+ * its note says when the paper record has it.
+ */
+async function keepCustody(
   scene: Scene,
   colleagues: Colleagues,
   caseId: string,
   exhibits: Map<number, Exhibit>,
   firstHolder: string,
 ): Promise<void> {
-  const holder = new Map<number, string>();
+  const holders = new Map<number, string>();
   for (const entry of scene.custody) {
     const exhibit = exhibits.get(entry.exhibit);
-    const from = holder.get(entry.exhibit) ?? firstHolder;
-    if (entry.kind !== 'handed-over' || !exhibit || entry.to === null || entry.to === from)
-      continue;
-    if (!scene.people.some((person) => person.name === entry.to)) continue;
+    if (!exhibit) continue;
     const params = { caseId, exhibitId: exhibit.id };
-    const giver = await colleagues.named(from);
-    const receiver = await colleagues.named(entry.to);
-    const offered = await giver.call(handOver, {
-      params,
-      body: {
-        toId: colleagues.idOf(entry.to),
-        purpose: entry.purpose,
-        location: entry.location,
-        sealNumber: entry.sealAfter ?? '',
-        happenedAt: utc(entry.at),
-      },
-    });
-    await receiver.call(answerHandOver, {
-      params,
-      body: {
-        sequence: offered.event.sequence,
-        answer: 'accepted',
-        password: colleagues.password,
-        condition: 'Packaging whole, seal as stated.',
-        sealNumber: entry.sealAfter ?? '',
-        location: entry.location,
-      },
-    });
-    holder.set(entry.exhibit, entry.to);
-    await receiver.call(readExhibit, { params });
+    const holder = holders.get(entry.exhibit) ?? firstHolder;
+    const person = await colleagues.named(holder);
+    const { purpose, location, to, kind } = entry;
+    const note = `Paper record: ${entry.at}.`;
+    if (kind === 'handed-over' && to !== null && to !== holder) {
+      const body = { toId: colleagues.idOf(to), purpose, location, note };
+      const offered = await person.call(handOver, { params, body });
+      const receiver = await colleagues.named(to);
+      await receiver.call(answerHandOver, {
+        params,
+        body: {
+          sequence: offered.event.sequence,
+          answer: 'accepted',
+          password: colleagues.password,
+          condition: 'Packaging whole, seal as stated.',
+          location,
+        },
+      });
+      holders.set(entry.exhibit, to);
+    } else if (kind === 'opened' || kind === 'sealed') {
+      const sealNumber = entry.sealAfter ?? '';
+      const body = { kind, purpose, location, sealNumber, note } as const;
+      await person.call(recordCustody, { params, body });
+    }
   }
+}
+
+/** The seal that an item bore when it came in. */
+function firstSeal(scene: Scene, number: number, now: string | null): string {
+  const collected = scene.custody.find((e) => e.exhibit === number && e.kind === 'collected');
+  return collected?.sealAfter ?? now ?? '';
 }
 
 /** Records a computation for every station; returns their hashes by station. */
@@ -211,6 +215,7 @@ async function solve(
   });
   const hashes = new Map<string, string>();
   for (const station of document.stations) {
+    if (station.knowns.length === 0) continue;
     const recorded = await investigator.call(recordComputation, {
       params: { caseId, reconstructionId: reconstruction.id },
       body: { stationId: station.id, version: reconstruction.version },

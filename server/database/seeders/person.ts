@@ -55,21 +55,24 @@ export class Person {
     params: object | undefined,
     options: { query?: object; headers?: Record<string, string>; body?: string | FormData },
   ): Promise<Response> {
-    const path = Object.entries(params ?? {}).reduce(
+    const path = Object.entries(params ?? {}).reduce<string>(
       (text, [name, value]) => text.replace(`:${name}`, encodeURIComponent(String(value))),
-      endpoint.path as string,
+      endpoint.path,
     );
     const query = new URLSearchParams(options.query as Record<string, string> | undefined);
-    const answer = await fetch(`${this.address}${path}${query.size > 0 ? `?${query}` : ''}`, {
-      method: endpoint.method,
-      headers: {
-        ...options.headers,
-        Cookie: this.cookie,
-        'X-CSRF-Token': this.csrfToken,
-        ...(endpoint.idempotent ? { 'Idempotency-Key': newId() } : {}),
+    const answer = await fetch(
+      `${this.address}${path}${query.size > 0 ? `?${query.toString()}` : ''}`,
+      {
+        method: endpoint.method,
+        headers: {
+          ...options.headers,
+          Cookie: this.cookie,
+          'X-CSRF-Token': this.csrfToken,
+          ...(endpoint.idempotent ? { 'Idempotency-Key': newId() } : {}),
+        },
+        body: options.body,
       },
-      body: options.body,
-    });
+    );
     const cookie = answer.headers.get('Set-Cookie')?.split(';')[0];
     if (cookie !== undefined) this.cookie = cookie;
     if (!answer.ok) {

@@ -58,7 +58,9 @@ function isDirectionOfTrace(
   if (known.direction === undefined || known.magnitude !== undefined) return false;
   return assigned.some(
     ({ survey, body, point }) =>
-      body === known.at?.body && point === known.at.point && byLabel.get(survey)?.trace != null,
+      body === known.at?.body &&
+      point === known.at.point &&
+      (byLabel.get(survey)?.trace ?? null) !== null,
   );
 }
 
