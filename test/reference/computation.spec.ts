@@ -11,8 +11,9 @@ import {
   solveDocument,
 } from '#shared/engine/computation/index';
 import type { PoseProblem } from '#shared/engine/documents/pose-problem';
+import type { PoseSolution } from '#shared/engine/documents/pose-solution';
 
-const vectors = <T>(name: string): T =>
+const vectors = (name: string): unknown =>
   JSON.parse(readFileSync(new URL(`./vectors/${name}.json`, import.meta.url), 'utf8'));
 
 interface Canonical {
@@ -34,7 +35,7 @@ interface Hashes {
 }
 
 describe('canonical JSON (RFC 8785 and the test data of its author)', () => {
-  const jcs = vectors<Canonical>('jcs_rfc8785');
+  const jcs = vectors('jcs_rfc8785') as Canonical;
   for (const { name, input_utf8: input, output_utf8: output, output_sha256: hash } of jcs.cases)
     it(name, () => {
       expect(canonicalText(JSON.parse(input))).toBe(output);
@@ -60,7 +61,7 @@ describe('canonical JSON (RFC 8785 and the test data of its author)', () => {
 });
 
 describe('SHA-256 (FIPS 180-4 examples)', () => {
-  for (const test of vectors<Hashes>('sha2_fips180').tests)
+  for (const test of (vectors('sha2_fips180') as Hashes).tests)
     it(test.name, () => {
       const [letter, times] = test.message_repeat ?? ['', 0];
       expect(sha256Hex(test.message_utf8 ?? letter.repeat(times))).toBe(test.sha256);
@@ -111,6 +112,8 @@ const problem: PoseProblem = {
   loss: 'squares',
 };
 
+const resultOf = (text: string) => JSON.parse(text) as { result: PoseSolution };
+
 describe('computation record', () => {
   const kept = compute('pose', problem);
 
@@ -135,8 +138,8 @@ describe('computation record', () => {
   });
 
   it('shows a changed result, and where', () => {
-    const changed = JSON.parse(kept.text);
-    changed.result.bodies.car.pose.x += 0.001;
+    const changed = resultOf(kept.text);
+    changed.result.bodies['car'].pose.x += 0.001;
     const again = recompute(changed);
     expect(again.identical).toBe(false);
     expect(again.agrees).toBe(false);
@@ -147,7 +150,7 @@ describe('computation record', () => {
   });
 
   it('tells rounding from a difference', () => {
-    const rounded = JSON.parse(kept.text);
+    const rounded = resultOf(kept.text);
     rounded.result.chiSquared *= 1 + 1e-13;
     const again = recompute(rounded);
     expect(again.identical).toBe(false);
@@ -155,7 +158,7 @@ describe('computation record', () => {
   });
 
   it('shows a result with a part missing', () => {
-    const cut = JSON.parse(kept.text);
+    const cut = resultOf(kept.text);
     cut.result.residuals.pop();
     expect(recompute(cut).agrees).toBe(false);
   });

@@ -16,7 +16,7 @@ export function recomputeReport(text: string, name: string): RecomputeReport {
     const found = recompute(JSON.parse(text));
     const { differences, document } = found;
     const lines = [
-      `${name}`,
+      name,
       `  kind       ${document.kind}, engine ${document.engine}${found.sameEngine ? '' : ' (another version than this one)'}`,
       `  SHA-256    ${found.address}${found.address === sha256Hex(text) ? '' : ' (of the canonical text; the file is written otherwise)'}`,
     ];

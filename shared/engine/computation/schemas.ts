@@ -6,6 +6,7 @@ import { poseProblem } from '../documents/pose-problem';
 import { poseSolution } from '../documents/pose-solution';
 import { reconstructionDocument } from '../documents/reconstruction';
 import { stationAnswer, stationProblem } from '../documents/station';
+import { worksheetProblem, worksheetSolution } from '../documents/worksheet';
 
 const documents = {
   computation,
@@ -16,6 +17,8 @@ const documents = {
   reconstruction: reconstructionDocument,
   'station-problem': stationProblem,
   'station-answer': stationAnswer,
+  'worksheet-problem': worksheetProblem,
+  'worksheet-solution': worksheetSolution,
 };
 
 /**

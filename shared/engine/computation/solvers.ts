@@ -5,9 +5,11 @@ import { motionSolution } from '../documents/motion-solution';
 import { poseProblem } from '../documents/pose-problem';
 import { poseSolution } from '../documents/pose-solution';
 import { stationAnswer, stationProblem } from '../documents/station';
+import { worksheetProblem, worksheetSolution } from '../documents/worksheet';
 import { solveInstant } from '../instant/index';
 import { fitPoses } from '../pose/index';
 import { solveStation } from '../reconstruction/index';
+import { solveWorksheet } from '../worksheets/index';
 
 /** Computes one kind of document: what it takes, what it gives, and how. */
 export interface Solver {
@@ -44,5 +46,8 @@ export const solvers: Readonly<Partial<Record<ComputationKind, Solver>>> = {
     stationAnswer,
     solveStation,
     ({ failure, solution }) => failure?.code ?? solution?.status ?? 'poses only',
+  ),
+  worksheet: solver(worksheetProblem, worksheetSolution, solveWorksheet, ({ warnings }) =>
+    warnings.length === 0 ? 'determined' : 'with warnings',
   ),
 };

@@ -109,7 +109,7 @@ function checkJoint(joint: PoseProblem['joints'][number], points: Points): void 
   if (joint.kind === 'guide') vector(joint.at, `${field}.at`);
   if (joint.kind === 'guide' || joint.kind === 'slot') {
     finite(joint.direction, `${field}.direction`);
-    if (joint.radius != null) {
+    if (joint.radius !== undefined && joint.radius !== null) {
       finite(joint.radius, `${field}.radius`);
       if (joint.radius === 0)
         throw new EngineError('zero-length', `${field}.radius`, 'The radius cannot be zero.');

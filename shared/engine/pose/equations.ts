@@ -12,7 +12,7 @@ export interface Row {
 export interface Equation {
   /** Path of the field that it came from. */
   readonly of: string;
-  evaluate(x: Float64Array): readonly Row[];
+  readonly evaluate: (x: Float64Array) => readonly Row[];
 }
 
 /** An equation that holds within an uncertainty. */

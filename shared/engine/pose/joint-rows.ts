@@ -17,7 +17,7 @@ import { place, type Layout, type Place } from './layout';
 export interface JointRow {
   readonly of: string;
   readonly sigma: number;
-  evaluate(x: Float64Array): readonly Row[];
+  readonly evaluate: (x: Float64Array) => readonly Row[];
 }
 
 type Share = readonly [place: Place, gradient: Vector];

@@ -1,25 +1,19 @@
 import { create, parseDependencies, type MathNode } from 'mathjs/number';
 import { EngineError } from '../errors';
+import { binary, chain, functions, operators, type Dual } from './dual';
 
 /**
  * Arithmetic in text, such as `sqrt(2 * g * mu * d)`, read by mathjs and evaluated here.
  *
- * Only what is listed below is allowed, and nothing is handed to mathjs to be run: a formula
- * cannot reach anything but its own symbols. Evaluation carries the derivative by every symbol
- * along (forward mode), exact to rounding, for the propagation of uncertainty.
+ * Only numbers, known symbols, + - * / ^ and the functions of dual.ts are allowed, and nothing is
+ * handed to mathjs to be run: a formula cannot reach anything but its own symbols. `sum(…)` adds a
+ * term over the rows of a table.
  */
-export interface Dual {
-  readonly value: number;
-  /** ∂value/∂symbol, in the order of the expression's symbols. */
-  readonly gradient: Float64Array;
-}
-
 export interface Expression {
   readonly text: string;
   /** Symbols in the order in which `evaluate` takes them. */
   readonly symbols: readonly string[];
-  /** Symbols that the text uses. */
-  readonly used: ReadonlySet<string>;
+  readonly term: Term;
   evaluate(values: readonly number[]): number;
   differentiate(values: readonly number[]): Dual;
 }
@@ -27,88 +21,31 @@ export interface Expression {
 const { parse } = create(parseDependencies, {});
 const longest = 400;
 
-type Rule = (x: Dual) => Dual;
-
-/** f(x) with f′(x). */
-const lift =
-  (f: (x: number) => number, derivative: (x: number, y: number) => number): Rule =>
-  (x) => {
-    const value = f(x.value);
-    return chain(value, x, derivative(x.value, value));
-  };
-
-const functions: Readonly<Record<string, Rule>> = {
-  sqrt: lift(Math.sqrt, (_, y) => 0.5 / y),
-  exp: lift(Math.exp, (_, y) => y),
-  log: lift(Math.log, (x) => 1 / x),
-  sin: lift(Math.sin, Math.cos),
-  cos: lift(Math.cos, (x) => -Math.sin(x)),
-  tan: lift(Math.tan, (_, y) => 1 + y * y),
-  asin: lift(Math.asin, (x) => 1 / Math.sqrt(1 - x * x)),
-  acos: lift(Math.acos, (x) => -1 / Math.sqrt(1 - x * x)),
-  atan: lift(Math.atan, (x) => 1 / (1 + x * x)),
-  abs: lift(Math.abs, Math.sign),
-};
-
-const chain = (value: number, x: Dual, slope: number): Dual => ({
-  value,
-  gradient: x.gradient.map((g) => (g === 0 ? 0 : g * slope)),
-});
-
-const combine = (value: number, a: Dual, slopeA: number, b: Dual, slopeB: number): Dual => ({
-  value,
-  gradient: a.gradient.map(
-    (g, i) => (g === 0 ? 0 : g * slopeA) + (b.gradient[i] === 0 ? 0 : b.gradient[i] * slopeB),
-  ),
-});
-
-const operators: Readonly<Record<string, (a: Dual, b: Dual) => Dual>> = {
-  '+': (a, b) => combine(a.value + b.value, a, 1, b, 1),
-  '-': (a, b) => combine(a.value - b.value, a, 1, b, -1),
-  '*': (a, b) => combine(a.value * b.value, a, b.value, b, a.value),
-  '/': (a, b) => {
-    const quotient = a.value / b.value;
-    return combine(quotient, a, 1 / b.value, b, -quotient / b.value);
-  },
-  '^': (a, b) => {
-    const power = a.value ** b.value;
-    return combine(
-      power,
-      a,
-      b.value * a.value ** (b.value - 1),
-      b,
-      a.value > 0 ? power * Math.log(a.value) : 0,
-    );
-  },
-};
-
-/** Functions of two arguments: each picks one of them, or is an angle. */
-const binary: Readonly<Record<string, (a: Dual, b: Dual) => Dual>> = {
-  max: (a, b) => (a.value >= b.value ? a : b),
-  min: (a, b) => (a.value <= b.value ? a : b),
-  atan2: (a, b) => {
-    const square = a.value ** 2 + b.value ** 2;
-    return combine(Math.atan2(a.value, b.value), a, b.value / square, b, -a.value / square);
-  },
-};
-
 type Term = (values: readonly Dual[]) => Dual;
 
+export interface Scope {
+  /** Symbols with a fixed value. */
+  readonly constants?: Readonly<Record<string, number>>;
+  /** Symbols that stand for another expression of the same symbols. */
+  readonly definitions?: ReadonlyMap<string, Expression>;
+  /** Columns of a table; row i of column `d` is the symbol `d_i`, from 1. */
+  readonly rows?: { readonly columns: readonly string[]; readonly count: number };
+}
+
 /**
- * Reads a formula. `constants` are symbols with a fixed value.
- * Throws EngineError `unsupported` with `field` when the text is not arithmetic of the symbols.
+ * Reads a formula of the given symbols.
+ * Throws EngineError `unsupported` with `field` when the text is not arithmetic of them.
  */
 export function readExpression(
   text: string,
   symbols: readonly string[],
   field: string,
-  constants: Readonly<Record<string, number>> = { pi: Math.PI },
+  scope: Scope = {},
 ): Expression {
   if (text.length > longest)
     throw new EngineError('unsupported', field, `The formula is over ${longest} characters long.`);
-  const used = new Set<string>();
   const order = new Map(symbols.map((symbol, i) => [symbol, i]));
-  const reader: Reader = { field, used, order, constants };
+  const reader: Reader = { field, order, scope, row: null };
   const term = read(parseText(text, field), reader);
   const differentiate = (values: readonly number[]): Dual =>
     term(
@@ -121,12 +58,14 @@ export function readExpression(
   return {
     text,
     symbols,
-    used,
+    term,
     differentiate,
-    evaluate: (values) =>
-      term(values.map((value) => ({ value, gradient: new Float64Array(0) }))).value,
+    evaluate: (values) => term(values.map((value) => ({ value, gradient: none }))).value,
   };
 }
+
+const none = new Float64Array(0);
+const fixed: Readonly<Record<string, number>> = { pi: Math.PI };
 
 function parseText(text: string, field: string): MathNode {
   try {
@@ -138,65 +77,84 @@ function parseText(text: string, field: string): MathNode {
 
 interface Reader {
   readonly field: string;
-  readonly used: Set<string>;
   readonly order: ReadonlyMap<string, number>;
-  readonly constants: Readonly<Record<string, number>>;
+  readonly scope: Scope;
+  /** Row of the table that `sum` is at. */
+  readonly row: number | null;
+}
+
+function refuse(reader: Reader, what: string): never {
+  throw new EngineError('unsupported', reader.field, `The formula may not contain ${what}.`);
 }
 
 function read(node: MathNode, reader: Reader): Term {
-  const refuse = (what: string): never => {
-    throw new EngineError('unsupported', reader.field, `The formula may not contain ${what}.`);
-  };
-  if (isConstant(node)) {
-    const value = Number(node.value);
-    return Number.isFinite(value) ? constant(value) : refuse(`"${String(node.value)}"`);
-  }
+  if (isConstant(node))
+    return typeof node.value === 'number' && Number.isFinite(node.value)
+      ? constant(node.value)
+      : refuse(reader, `"${String(node.value)}"`);
   if (isParenthesis(node)) return read(node.content, reader);
-  if (isSymbol(node)) {
-    const at = reader.order.get(node.name);
-    if (at !== undefined) {
-      reader.used.add(node.name);
-      return (values) => values[at];
-    }
-    return Object.hasOwn(reader.constants, node.name)
-      ? constant(reader.constants[node.name])
-      : refuse(`the unknown symbol "${node.name}"`);
-  }
-  if (isOperator(node)) {
-    const terms = node.args.map((arg) => read(arg, reader));
-    if (terms.length === 1 && node.op === '-') {
-      const [inner] = terms;
-      return (values) => {
-        const x = inner(values);
-        return chain(-x.value, x, -1);
-      };
-    }
-    const rule = Object.hasOwn(operators, node.op) ? operators[node.op] : refuse(`"${node.op}"`);
-    if (terms.length < 2) refuse(`"${node.op}" before a value`);
-    return terms.reduce((left, right) => (values) => rule(left(values), right(values)));
-  }
-  if (isFunction(node)) {
-    const name = isSymbol(node.fn) ? node.fn.name : refuse('that call');
-    const terms = node.args.map((arg) => read(arg, reader));
-    if (Object.hasOwn(functions, name) && terms.length === 1) {
-      const [inner] = terms;
-      return (values) => functions[name](inner(values));
-    }
-    if (Object.hasOwn(binary, name) && terms.length === 2) {
-      const [a, b] = terms;
-      return (values) => binary[name](a(values), b(values));
-    }
-    return refuse(`the function "${name}" with ${terms.length} arguments`);
-  }
-  return refuse('anything but arithmetic');
+  if (isSymbol(node)) return readSymbol(node.name, reader);
+  if (isOperator(node)) return readOperator(node, reader);
+  if (isFunction(node)) return readCall(node, reader);
+  return refuse(reader, 'anything but arithmetic');
 }
 
-const constant = (value: number): Term => {
-  return (values) => ({
+function readSymbol(name: string, reader: Reader): Term {
+  const { order, scope, row } = reader;
+  const inRow = row !== null && scope.rows?.columns.includes(name);
+  const at = order.get(inRow ? `${name}_${row}` : name);
+  if (at !== undefined) return (values) => values[at];
+  const definition = scope.definitions?.get(name);
+  if (definition !== undefined) return definition.term;
+  const constants = { ...fixed, ...scope.constants };
+  return Object.hasOwn(constants, name)
+    ? constant(constants[name])
+    : refuse(reader, `the unknown symbol "${name}"`);
+}
+
+function readOperator({ op, args }: { op: string; args: MathNode[] }, reader: Reader): Term {
+  const terms = args.map((arg) => read(arg, reader));
+  if (terms.length === 1 && op === '-') {
+    const [inner] = terms;
+    return (values) => {
+      const x = inner(values);
+      return chain(-x.value, x, -1);
+    };
+  }
+  if (terms.length < 2 || !Object.hasOwn(operators, op)) refuse(reader, `"${op}" there`);
+  const rule = operators[op];
+  return terms.reduce((left, right) => (values) => rule(left(values), right(values)));
+}
+
+function readCall({ fn, args }: { fn: MathNode; args: MathNode[] }, reader: Reader): Term {
+  const name = isSymbol(fn) ? fn.name : refuse(reader, 'that call');
+  if (name === 'sum' && args.length === 1) return readSum(args[0], reader);
+  const terms = args.map((arg) => read(arg, reader));
+  if (Object.hasOwn(functions, name) && terms.length === 1) {
+    const [inner] = terms;
+    return (values) => functions[name](inner(values));
+  }
+  if (Object.hasOwn(binary, name) && terms.length === 2) {
+    const [a, b] = terms;
+    return (values) => binary[name](a(values), b(values));
+  }
+  return refuse(reader, `the function "${name}" with ${terms.length} arguments`);
+}
+
+function readSum(node: MathNode, reader: Reader): Term {
+  const { rows } = reader.scope;
+  if (rows === undefined || reader.row !== null) return refuse(reader, '"sum" there');
+  const terms = Array.from({ length: rows.count }, (_, i) => read(node, { ...reader, row: i + 1 }));
+  const add = operators['+'];
+  return (values) => terms.reduce((total, term) => add(total, term(values)), constant(0)(values));
+}
+
+const constant =
+  (value: number): Term =>
+  (values) => ({
     value,
-    gradient: new Float64Array(values.length === 0 ? 0 : values[0].gradient.length),
+    gradient: values.length === 0 ? none : new Float64Array(values[0].gradient.length),
   });
-};
 
 interface Typed {
   readonly type: string;
