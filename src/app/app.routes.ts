@@ -21,6 +21,7 @@ const caseSections: Routes = [
   {
     path: 'exhibits',
     title: 'Exhibits',
+    canDeactivate: [unsavedWork],
     loadComponent: async () => (await import('./case-file/exhibits/exhibits')).Exhibits,
   },
   {

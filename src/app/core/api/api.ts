@@ -64,7 +64,11 @@ export class Api {
 
   private headers(endpoint: Endpoint, request: { ifMatch?: number; idempotencyKey?: string }) {
     let headers = new HttpHeaders();
-    if (endpoint.method !== 'GET') headers = headers.set('X-CSRF-Token', this.csrfToken());
+    if (endpoint.method !== 'GET') {
+      // The zone in which something was entered is recorded beside the UTC time.
+      const { timeZone } = Intl.DateTimeFormat().resolvedOptions();
+      headers = headers.set('X-CSRF-Token', this.csrfToken()).set('Time-Zone', timeZone);
+    }
     if (request.ifMatch !== undefined) headers = headers.set('If-Match', `"${request.ifMatch}"`);
     if (endpoint.idempotent) {
       headers = headers.set('Idempotency-Key', request.idempotencyKey ?? crypto.randomUUID());
