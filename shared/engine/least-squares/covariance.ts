@@ -20,7 +20,9 @@ export function unitColumns(
   const scaled = Float64Array.from(a);
   const lengths = new Float64Array(n);
   for (let j = 0; j < n; j++) {
-    lengths[j] = Math.hypot(...a.subarray(j * m, (j + 1) * m)) || 1;
+    let square = 0;
+    for (let i = j * m; i < (j + 1) * m; i++) square += a[i] * a[i];
+    lengths[j] = Math.sqrt(square) || 1;
     for (let i = j * m; i < (j + 1) * m; i++) scaled[i] /= lengths[j];
   }
   return { scaled, lengths };

@@ -1,30 +1,15 @@
 /**
- * Reproducible random numbers: xoshiro128** seeded by SplitMix32, so that the same seed gives the
- * same draws on every machine.
- * Sources: D. Blackman and S. Vigna, "Scrambled linear pseudorandom number generators", ACM Trans.
- * Math. Softw. 47 (2021) 36; ziggurat for the normal: G. Marsaglia and W. W. Tsang, J. Stat. Softw.
- * 5 (2000) 8, in the form of J. A. Doornik (2005), which draws the layer and the value apart. All
- * from memory.
+ * The generator xoshiro128**, from its four words of state (not all 0).
+ * Source: D. Blackman and S. Vigna, "Scrambled linear pseudorandom number generators", ACM Trans.
+ * Math. Softw. 47 (2021) 36, from memory.
  */
-export class Random {
-  private a: number;
-  private b: number;
-  private c: number;
-  private d: number;
-
-  /** `seed` and `stream` are whole numbers from 0 to 2³² − 1; streams of one seed are unrelated. */
-  constructor(seed: number, stream = 0) {
-    // seed and stream are each scattered first: streams that began side by side would overlap
-    let state = scatter((scatter(seed) + Math.imul(stream, 0x85ebca6b)) >>> 0);
-    const next = (): number => {
-      state = (state + 0x9e3779b9) >>> 0;
-      return scatter(state);
-    };
-    this.a = next();
-    this.b = next();
-    this.c = next();
-    this.d = next() | 1;
-  }
+export class Xoshiro128 {
+  constructor(
+    private a: number,
+    private b: number,
+    private c: number,
+    private d: number,
+  ) {}
 
   /** The next 32 bits, as a whole number. */
   bits(): number {
@@ -38,6 +23,26 @@ export class Random {
     this.c ^= s1 << 9;
     this.d = (this.d << 11) | (this.d >>> 21);
     return result;
+  }
+}
+
+/**
+ * Reproducible random numbers: the same seed gives the same draws on every machine.
+ *
+ * `seed` and `stream` are whole numbers from 0 to 2³² − 1; streams of one seed are unrelated. The
+ * state comes from SplitMix32. Source of the normal: the ziggurat of G. Marsaglia and W. W. Tsang, J.
+ * Stat. Softw. 5 (2000) 8, in the form of J. A. Doornik (2005), which draws the layer and the value
+ * apart; from memory.
+ */
+export class Random extends Xoshiro128 {
+  constructor(seed: number, stream = 0) {
+    // seed and stream are each scattered first: streams that began side by side would overlap
+    let state = scatter((scatter(seed) + Math.imul(stream, 0x85ebca6b)) >>> 0);
+    const next = (): number => {
+      state = (state + 0x9e3779b9) >>> 0;
+      return scatter(state);
+    };
+    super(next(), next(), next(), next() | 1);
   }
 
   /** Uniform in (0, 1), 53 bits, never 0. */
