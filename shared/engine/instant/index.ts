@@ -41,6 +41,7 @@ export const solveInstant = (problem: MotionProblem): MotionSolution => {
   const redundancy = first.verdict.redundancy + (second?.verdict.redundancy ?? 0);
   const chiSquared = branches.length > 0 ? branches[0].chiSquared : 0;
   const residuals = branches.length > 0 ? branches[0].residuals : [];
+  const described = describe(answer, 'velocity', first);
   const suggestions = [
     ...suggest(answer, 'velocity', first),
     ...(second === null || first.free.length > 0 ? [] : suggest(answer, 'acceleration', second)),
@@ -55,7 +56,7 @@ export const solveInstant = (problem: MotionProblem): MotionSolution => {
     pValue: redundancy > 0 ? chiSquaredPValue(chiSquared, redundancy) : null,
     residuals,
     suspects: suspectsOf(residuals),
-    free: [...describe(answer, 'velocity', first), ...describe(answer, 'acceleration', second)],
+    free: described.length > 0 ? described : describe(answer, 'acceleration', second),
     helps: suggestions.map(inWords),
     suggestions,
     clash: clashOf(answer),

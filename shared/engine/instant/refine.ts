@@ -51,6 +51,7 @@ export const refine = (
   const rows = rowsFor(equations.count);
   const all = Array.from({ length: equations.count }, (_, k) => k);
   let structure: Structure | null = null;
+  let before = Infinity;
   for (let round = 0; round < rounds; round++) {
     writeEquations(equations, model.ground, s, rows);
     const norms = rowNorms(rows, scales, model.ground);
@@ -76,8 +77,10 @@ export const refine = (
       shift[j] = adjustment.n[j];
     }
     if (m > 0) shiftValues(model, s, base, shift);
-    const settled = change <= 1e-13 * size || (round > 8 && change < 1e-9 * size);
-    if (!settled) continue;
+    // Where the position is nearly singular, rounding keeps the steps from getting smaller.
+    const stalled = change >= 0.5 * before && change <= 1e-4 * size;
+    before = change;
+    if (change > 1e-13 * size && !stalled) continue;
     if (contradicts(task, structure, w, rows.right, norms, size)) return null;
     return resultOf(task, s, { a, b, structure, adjustment, held });
   }

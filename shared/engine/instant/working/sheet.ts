@@ -189,7 +189,9 @@ export class Sheet {
 
   result(symbol: WorkingSymbol, value: number, sigma: number | null = null): WorkingQuantity {
     const number = sumTex([term(1, quantity(value, symbol.unit))]);
-    const unit = ['', 'rad'].includes(symbol.unit) ? '' : `\\ \\text{${symbol.unit}}`;
+    const unit = ['', 'rad'].includes(symbol.unit)
+      ? ''
+      : `\\ \\text{${symbol.unit.replace('²', '')}}${symbol.unit.endsWith('²') ? '^{2}' : ''}`;
     return { symbol, value, sigma, tex: `${symbol.tex} = ${number}${unit}` };
   }
 

@@ -31,7 +31,7 @@ export const symbolsOf = (t: Term): WorkingSymbol[] =>
   t.factors.flatMap((f) => ('symbol' in f ? [f.symbol] : []));
 
 /** An angle that stands alone is read in degrees. */
-const loneTex = (f: Factor & { readonly number: number }): string =>
+const loneTex = (f: Extract<Factor, { readonly number: number }>): string =>
   f.unit === 'rad'
     ? `${numberTex((Math.abs(f.number) * 180) / Math.PI)}^{\\circ}`
     : numberTex(Math.abs(f.number));
