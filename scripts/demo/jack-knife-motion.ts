@@ -36,7 +36,7 @@ export const UNIT = {
 } as const satisfies { points: Record<string, Record<string, Vec2>> } & Record<string, unknown>;
 
 export const TRAILER_LOCKS = 1.7;
-const STEP = 0.0005;
+const STEP = 0.001;
 const FADE = 0.02;
 /** Slip ratio at which the free steered wheels reach most of their side force. */
 const SIDE_SLIP_SCALE = 0.06;
@@ -222,10 +222,11 @@ export function jackKnifeMotion(): JackKnifeMotion {
     states.push(rungeKuttaStep(derivative(rolls(time)), time, states[states.length - 1], STEP));
   }
   const at = (time: number): UnitMotion => {
-    const index = Math.min(Math.round(Math.floor(time / STEP + 1e-9)), states.length - 1);
+    const index = Math.min(Math.floor(time / STEP + 1e-6), states.length - 1);
     const phase = rolls(index * STEP);
-    const rest = Math.max(0, time - index * STEP);
-    const state = rungeKuttaStep(derivative(phase), time, states[index], rest);
+    const rest = time - index * STEP;
+    const state =
+      rest > 1e-9 ? rungeKuttaStep(derivative(phase), time, states[index], rest) : states[index];
     return bodiesOf(state, accelerations(state, phase, loads));
   };
   return { at, restTime: (states.length - 1) * STEP, loads };

@@ -37,8 +37,8 @@ export function pressSketch(survey: PressSurvey): Sketch {
     date: '2026-08-19T18:05:00-08:00',
     bearingOfX: null,
     window: [
-      [-1.0, -0.8],
-      [1.0, 0.36],
+      [-1.2, -0.8],
+      [1.2, 0.36],
     ],
     scaleBar: { length: 0.4, label: '0 - 400 mm' },
     lines: [

@@ -30,7 +30,7 @@ export type Wheel = keyof typeof CAR.wheels;
 export const WHEELS = Object.keys(CAR.wheels) as Wheel[];
 
 const START = [2.0, -3.55, 0.34, 19.9, 0.1, 2.02];
-const STEP = 0.0005;
+const STEP = 0.001;
 /** Below this sliding speed (m/s) friction fades out, so that the car comes to rest smoothly. */
 const FADE = 0.02;
 
@@ -98,8 +98,9 @@ export function spinMotion(): SpinMotion {
   }
   const restTime = (states.length - 1) * STEP;
   const at = (time: number): BodyMotion => {
-    const index = Math.min(Math.floor(time / STEP), states.length - 1);
-    const state = rungeKuttaStep(rate, 0, states[index], Math.max(0, time - index * STEP));
+    const index = Math.min(Math.floor(time / STEP + 1e-6), states.length - 1);
+    const rest = time - index * STEP;
+    const state = rest > 1e-9 ? rungeKuttaStep(rate, 0, states[index], rest) : states[index];
     return motionOf(state, accelerations(state, loads));
   };
   return { at, restTime, loads };
