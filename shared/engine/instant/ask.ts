@@ -123,7 +123,9 @@ export const relativeMotion = (
   const b = ask(problem, solution, branch, second, 'second').motion;
   const apart = subtract(b.position, a.position);
   const distance = norm(apart);
-  if (normal === undefined && !(distance > 0))
+  const together =
+    1e-9 * Math.max(...answerTo(problem, solution).model.bodies.map((x) => x.length));
+  if (normal === undefined && distance <= together)
     throw new EngineError(
       'coincident-points',
       'normal',

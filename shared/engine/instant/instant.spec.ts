@@ -7,21 +7,12 @@ import { motionSolution } from '../documents/motion-solution';
 import { rotate } from '../geometry/vector';
 import { solveInstant, velocityOf } from './index';
 import type { Linkage } from './testing/random-linkage';
-import { derivatives, randomLinkage } from './testing/random-linkage';
+import { derivatives, drawFrom, randomLinkage } from './testing/random-linkage';
 
 /** Seeded, so that a failure repeats. */
 const runs = { seed: 20261201, numRuns: 150 };
 
 const drawn = fc.record({ seed: fc.integer(), count: fc.integer({ min: 1, max: 5 }) });
-
-/** Numbers evenly spread over [−1, 1] (a linear congruential generator, Numerical Recipes). */
-const drawFrom = (seed: number) => {
-  let state = seed >>> 0;
-  return (): number => {
-    state = (Math.imul(state, 1664525) + 1013904223) >>> 0;
-    return state / 2 ** 31 - 1;
-  };
-};
 
 const linkageOf = ({ seed, count }: { seed: number; count: number }): Linkage =>
   randomLinkage(drawFrom(seed), count);

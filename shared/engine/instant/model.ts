@@ -57,6 +57,11 @@ export interface ModelPath {
   readonly radiusAt: number;
   /** Radius of the rolling part, for rolling contact. */
   readonly rollingAt: number;
+  /**
+   * The direction is that of the path where the point is, wherever that may be; otherwise the path
+   * stands where it stands, and the direction at the point follows from its curvature.
+   */
+  readonly atPoint: boolean;
 }
 
 export interface ModelLink {

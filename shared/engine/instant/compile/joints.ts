@@ -41,6 +41,11 @@ export class References {
     return place;
   }
 
+  /** Whether the body's pose follows from its joints. */
+  follows(body: number): boolean {
+    return body < this.ground && this.bodies[body].follows;
+  }
+
   /** A point of the ground, given where it is in the scene. */
   groundPlace(at: Vector): Place {
     const [x, y] = subtract(at, this.centre);
@@ -103,12 +108,22 @@ const compileJoint = (
     }
     case 'guide': {
       const b = references.groundPlace(j.through ?? references.position(a));
-      return compilePath('guide', j, a, b, undefined, field, layout, references);
+      const path = { ...j, placed: j.through !== undefined };
+      return compilePath('guide', path, a, b, undefined, field, layout, references);
     }
     case 'slot': {
       const b = references.place(j.b, `${field}.b`);
       differ(a, b, field);
-      return compilePath('slot', j, a, b, undefined, field, layout, references);
+      return compilePath(
+        'slot',
+        { ...j, placed: true },
+        a,
+        b,
+        undefined,
+        field,
+        layout,
+        references,
+      );
     }
     case 'link':
       return compileLink(j, a, field, layout, references);
@@ -138,6 +153,8 @@ const compilePath = (
     readonly direction: number;
     readonly radius?: number | null;
     readonly sigma?: { readonly direction?: number; readonly radius?: number };
+    /** Whether it is said where the path runs. */
+    readonly placed: boolean;
   },
   a: Place,
   b: Place,
@@ -159,7 +176,16 @@ const compilePath = (
     references.limitSteps(a, Math.abs(effective));
     references.limitSteps(b, Math.abs(effective));
   }
-  return { kind: 'path', document, a, b, directionAt, radiusAt, rollingAt: rollingAt ?? -1 };
+  return {
+    kind: 'path',
+    document,
+    a,
+    b,
+    directionAt,
+    radiusAt,
+    rollingAt: rollingAt ?? -1,
+    atPoint: !j.placed && !references.follows(a.body),
+  };
 };
 
 const compileLink = (
@@ -228,6 +254,7 @@ const compileRoll = (
     direction: surface,
     radius: curved,
     sigma: { direction: j.sigma?.surface },
+    placed: j.b !== undefined,
   };
   return compilePath('roll', path, a, b, rollingAt, field, layout, references);
 };

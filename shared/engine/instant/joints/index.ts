@@ -2,7 +2,7 @@ import type { Level, ModelJoint, State } from '../model';
 import type { Rows } from '../rows';
 import { writeGear, writeGearSlide } from './gear';
 import { writeLink, writeLinkLength } from './link';
-import { writePath, writeSlide } from './path';
+import { writePath, writeSlide } from './sliding';
 import { writePin, writeWeld } from './pin';
 import { writeWheel, writeWheelSpeed } from './wheel';
 
@@ -33,19 +33,29 @@ export const writeJoint = (
   at: number,
 ): void => {
   switch (j.kind) {
-    case 'pin':
-      return writePin(j, level, s, rows, at);
-    case 'weld':
-      return writeWeld(j, level, s, rows, at);
-    case 'path':
-      return writePath(j, level, s, rows, at);
+    case 'pin': {
+      writePin(j, level, s, rows, at);
+      return;
+    }
+    case 'weld': {
+      writeWeld(j, level, s, rows, at);
+      return;
+    }
+    case 'path': {
+      writePath(j, level, s, rows, at);
+      return;
+    }
     case 'link':
       if (jointEquations(j, level) === 1) writeLink(j, level, s, rows, at);
       return;
-    case 'wheel':
-      return writeWheel(j, ground, level, s, rows, at);
-    case 'gear':
-      return writeGear(j, level, s, rows, at);
+    case 'wheel': {
+      writeWheel(j, ground, level, s, rows, at);
+      return;
+    }
+    case 'gear': {
+      writeGear(j, level, s, rows, at);
+      return;
+    }
   }
 };
 

@@ -30,6 +30,15 @@ export interface Linkage {
 /** Numbers in [−1, 1] that a test draws; used one after the other. */
 export type Draw = () => number;
 
+/** Numbers evenly spread over [−1, 1] (a linear congruential generator, Numerical Recipes). */
+export const drawFrom = (seed: number): Draw => {
+  let state = seed >>> 0;
+  return () => {
+    state = (Math.imul(state, 1664525) + 1013904223) >>> 0;
+    return state / 2 ** 31 - 1;
+  };
+};
+
 type Curve = (t: number) => Vector;
 
 const step = 1e-3;

@@ -1,4 +1,4 @@
-import { pathFrame, slideRate } from '../joints/path';
+import { pathFrame, slideRate } from '../joints/sliding';
 import { pointMotion } from '../knowns';
 import type { ModelJoint, ModelKnown, ModelPath, Place } from '../model';
 import { armX, armY, positionX, positionY } from '../model';

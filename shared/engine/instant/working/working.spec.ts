@@ -4,16 +4,8 @@ import katex from 'katex';
 import type { MotionProblem } from '../../documents/motion-problem';
 import type { MotionSolution } from '../../documents/motion-solution';
 import { solveInstant, workInstant } from '../index';
-import { randomLinkage } from '../testing/random-linkage';
+import { drawFrom, randomLinkage } from '../testing/random-linkage';
 import type { Term, Working, WorkingStep } from './working';
-
-const drawFrom = (seed: number) => {
-  let state = seed >>> 0;
-  return (): number => {
-    state = (Math.imul(state, 1664525) + 1013904223) >>> 0;
-    return state / 2 ** 31 - 1;
-  };
-};
 
 /** Every equation of the sheet holds for the values that the sheet itself states. */
 const expectConsistent = (working: Working, solution: MotionSolution): void => {

@@ -33,6 +33,7 @@ export const pathFrame = (j: ModelPath, s: State): PathFrame => {
   if (j.radiusAt < 0) return { ux, uy, curvature: 0 };
   const radius = s.g[j.radiusAt];
   const rolling = j.rollingAt < 0 ? 0 : s.g[j.rollingAt];
+  if (j.atPoint) return { ux, uy, curvature: 1 / (radius - rolling) };
   const toX = positionX(s, j.b) - uy * radius - positionX(s, j.a);
   const toY = positionY(s, j.b) + ux * radius - positionY(s, j.a);
   const length = Math.hypot(toX, toY);
