@@ -32,6 +32,10 @@ export const placeInTrace = ({ trace, order }: Pick<Mark, 'trace' | 'order'>): s
 /** Position along one axis with its standard uncertainty. */
 export const withSigma = (value: number, sigma: number): string => showUncertain(value, sigma, 'm');
 
+/** "1 row", "2 rows". */
+export const counted = (number: number, what: string): string =>
+  number === 1 ? `1 ${what}` : `${number} ${what}s`;
+
 export function sourceOf({ source }: Mark): string {
   return source.kind === 'entry'
     ? `entered by ${source.by}`

@@ -24,6 +24,7 @@ import { MarkDetails } from './mark-details';
 import { MarkForm } from './mark-form';
 import { MarkTable } from './mark-table';
 import { Place } from './place';
+import { counted } from './show-mark';
 import { SurveyMarks } from './survey-marks';
 import { WithdrawForm } from './withdraw-form';
 
@@ -92,6 +93,7 @@ export class Survey implements HoldsWork {
     if (panel === null || !this.current.may().work) return null;
     return (panel === 'edit' || panel === 'withdraw') && this.selected() === null ? null : panel;
   });
+  protected readonly counted = counted;
   protected readonly ellipseScales = ellipseScales;
   protected readonly ellipseScale = signal<number>(1);
   protected readonly planLabel = computed(

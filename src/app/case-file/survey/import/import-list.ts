@@ -2,6 +2,7 @@ import { ChangeDetectionStrategy, Component, input } from '@angular/core';
 import type { SurveyImport } from '#shared/contracts/survey';
 import { showMoment } from '../../../ui/dates/dates';
 import { EmptyState } from '../../../ui/empty-state/empty-state';
+import { counted } from '../show-mark';
 import { RejectedRows } from './rejected-rows';
 
 /** Every import of the case with the rows that it did not take. */
@@ -15,7 +16,10 @@ import { RejectedRows } from './rejected-rows';
           <b>{{ one.exhibitNumber }}, {{ one.fileName }}</b> by {{ one.by }},
           {{ showMoment(one.importedAt) }}
         </p>
-        <p class="muted">{{ one.accepted }} marks taken, {{ one.rejected.length }} rows rejected</p>
+        <p class="muted">
+          {{ counted(one.accepted, 'mark') }} taken,
+          {{ counted(one.rejected.length, 'row') }} rejected
+        </p>
         @if (one.rejected.length > 0) {
           <details>
             <summary>Rejected rows</summary>
@@ -46,5 +50,6 @@ import { RejectedRows } from './rejected-rows';
 export class ImportList {
   readonly imports = input.required<readonly SurveyImport[]>();
 
+  protected readonly counted = counted;
   protected readonly showMoment = showMoment;
 }

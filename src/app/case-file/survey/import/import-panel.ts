@@ -27,6 +27,7 @@ import { Messages } from '../../../core/messages/messages';
 import { EmptyState } from '../../../ui/empty-state/empty-state';
 import { ProblemMessage } from '../../../ui/problem-message/problem-message';
 import { CurrentCase } from '../../current-case';
+import { counted } from '../show-mark';
 import { SurveyMarks } from '../survey-marks';
 import { ImportPreview } from './import-preview';
 import { MappingForm } from './mapping-form';
@@ -145,7 +146,9 @@ export class ImportPanel {
         body,
         idempotencyKey: this.act.key,
       });
-      this.messages.done(`${done.accepted} marks imported, ${done.rejected.length} rows rejected.`);
+      this.messages.done(
+        `${counted(done.accepted, 'mark')} imported, ${counted(done.rejected.length, 'row')} rejected.`,
+      );
       this.survey.reload();
       this.imported.emit();
     } catch (error) {

@@ -1,7 +1,7 @@
 import { ChangeDetectionStrategy, Component, computed, input } from '@angular/core';
 import type { SurveyReading } from '#shared/survey/read-survey-csv';
 import { MarkSymbol } from '../../../ui/scale-plan/mark-symbol';
-import { coordinate, placeInTrace, shortLength } from '../show-mark';
+import { coordinate, counted, placeInTrace, shortLength } from '../show-mark';
 import { RejectedRows } from './rejected-rows';
 
 const mostShown = 200;
@@ -12,7 +12,10 @@ const mostShown = 200;
   imports: [MarkSymbol, RejectedRows],
   template: `
     <p role="status">
-      <b>{{ reading().rows.length }} rows accepted, {{ reading().rejected.length }} rejected.</b>
+      <b>
+        {{ counted(reading().rows.length, 'row') }} accepted,
+        {{ reading().rejected.length }} rejected.
+      </b>
       @if (unknown(); as text) {
         Unknown codes, kept as “other”: {{ text }}.
       }
@@ -107,6 +110,7 @@ export class ImportPreview {
       .join(', '),
   );
   protected readonly coordinate = coordinate;
+  protected readonly counted = counted;
   protected readonly placeInTrace = placeInTrace;
   protected readonly shortLength = shortLength;
 }
