@@ -41,6 +41,10 @@ export class ExhibitDetail {
     const pending = this.pending();
     return pending !== null && isOverdue(pending.offeredAt, Date.now());
   });
+  protected readonly place = computed(() => {
+    const { location } = this.exhibit().custody;
+    return location === '' ? 'at no recorded place' : `at: ${location}`;
+  });
   protected readonly facts = computed(() => {
     const exhibit = this.exhibit();
     return [
