@@ -29,7 +29,7 @@ const reach = 0.4;
     @defer (on immediate) {
       <ui-scale-plan
         [label]="label()"
-        [marks]="live.marks()"
+        [marks]="marks()"
         [traces]="traces()"
         [bodies]="bodies()"
         [vectors]="vectors()"
@@ -58,6 +58,9 @@ const reach = 0.4;
       >
         Accelerations
       </mat-checkbox>
+      <mat-checkbox [checked]="showsAll()" (change)="showsAll.set($event.checked)">
+        All marks
+      </mat-checkbox>
     </div>
   `,
   styles: `
@@ -76,11 +79,11 @@ const reach = 0.4;
     }
     .shows {
       position: absolute;
-      top: 4px;
-      right: 8px;
+      bottom: 0;
+      left: 50%;
       display: flex;
-      gap: 4px;
-      font-size: 13px;
+      transform: translateX(-50%);
+      white-space: nowrap;
     }
   `,
   changeDetection: ChangeDetectionStrategy.OnPush,
@@ -97,7 +100,23 @@ export class PlanTable {
   protected readonly showsVelocity = signal(true);
   protected readonly showsAcceleration = signal(false);
 
-  protected readonly traces = computed(() => tracesOf(this.live.marks()));
+  protected readonly showsAll = signal(false);
+
+  /** The marks that this reconstruction speaks of, with their traces; or all, also while none is chosen. */
+  protected readonly marks = computed(() => {
+    const all = this.live.marks();
+    const used = new Set(
+      this.workbench.stations().flatMap((station) => station.marks.map((one) => one.markId)),
+    );
+    if (this.showsAll() || this.place.panel() === 'marks' || used.size === 0) return all;
+    const traces = new Set(all.flatMap((mark) => (used.has(mark.id) ? [mark.trace] : [])));
+    const chosen = this.place.mark();
+    return all.filter(
+      (mark) =>
+        used.has(mark.id) || mark.id === chosen || (mark.trace !== null && traces.has(mark.trace)),
+    );
+  });
+  protected readonly traces = computed(() => tracesOf(this.marks()));
   protected readonly assigned = computed(
     () => this.workbench.station()?.marks.map((one) => one.markId) ?? [],
   );

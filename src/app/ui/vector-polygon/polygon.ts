@@ -15,14 +15,16 @@ export type Place = readonly [number, number];
 /** How a drawing of metres per second becomes one of pixels; y points up in the scene. */
 export interface Fit {
   readonly scale: number;
+  /** Of the drawing, no higher than it needs to be. */
+  readonly height: number;
   readonly toPage: (p: Place) => Place;
 }
 
-/** The largest scale at which every end lies inside the frame, with a margin for the labels. */
+/** The largest scale at which every end lies inside a frame of `width` by `most`, with room for labels. */
 export function fitArrows(
   arrows: readonly Pick<PolygonArrow, 'from' | 'to'>[],
   width: number,
-  height: number,
+  most: number,
   margin: { readonly x: number; readonly y: number },
 ): Fit {
   const ends: Place[] = [[0, 0], ...arrows.flatMap((arrow) => [arrow.from, arrow.to])];
@@ -32,11 +34,13 @@ export function fitArrows(
   const [low, high] = [Math.min(...ys), Math.max(...ys)];
   const scale = Math.min(
     right > left ? (width - 2 * margin.x) / (right - left) : Infinity,
-    high > low ? (height - 2 * margin.y) / (high - low) : Infinity,
+    high > low ? (most - 2 * margin.y) / (high - low) : Infinity,
   );
   const used = Number.isFinite(scale) ? scale : 1;
+  const height = Math.max(56, (high - low) * used + 2 * margin.y);
   return {
     scale: used,
+    height,
     toPage: ([x, y]) => [
       width / 2 + (x - (left + right) / 2) * used,
       height / 2 - (y - (low + high) / 2) * used,

@@ -3,7 +3,7 @@ import { showPlain } from '#shared/units/rounding';
 import { type Place, type PolygonArrow, fitArrows, roundLength } from './polygon';
 
 const width = 260;
-const height = 170;
+const mostHeight = 190;
 const margin = { x: 36, y: 22 };
 
 /**
@@ -25,10 +25,10 @@ export class VectorPolygon {
   readonly label = input.required<string>();
 
   protected readonly width = width;
-  protected readonly height = height;
 
-  private readonly fit = computed(() => fitArrows(this.arrows(), width, height, margin));
+  private readonly fit = computed(() => fitArrows(this.arrows(), width, mostHeight, margin));
 
+  protected readonly height = computed(() => this.fit().height);
   protected readonly pole = computed(() => this.fit().toPage([0, 0]));
   protected readonly drawn = computed(() => this.arrows().map((one) => draw(one, this.fit().toPage)));
   protected readonly bar = computed(() => {
@@ -73,7 +73,7 @@ function draw(arrow: PolygonArrow, toPage: (p: Place) => Place): Drawn {
     result: arrow.result,
     shaft: apart > 0 ? line(apart) + line(-apart) : line(0),
     head: `M${b[0]} ${b[1]}L${base[0] - wing * uy} ${base[1] + wing * ux}L${base[0] + wing * uy} ${base[1] - wing * ux}Z`,
-    labelAt: [(a[0] + b[0]) / 2 + 9 * off[0], (a[1] + b[1]) / 2 + 9 * off[1] + 4],
+    labelAt: [(a[0] + b[0]) / 2 + 12 * off[0], (a[1] + b[1]) / 2 + 12 * off[1] + 4],
     anchor: off[0] > 0.35 ? 'start' : off[0] < -0.35 ? 'end' : 'middle',
   };
 }

@@ -8,9 +8,10 @@ import {
   inject,
   input,
   model,
+  signal,
   untracked,
 } from '@angular/core';
-import { takeUntilDestroyed, toSignal } from '@angular/core/rxjs-interop';
+import { takeUntilDestroyed } from '@angular/core/rxjs-interop';
 import { FormControl, ReactiveFormsModule, type ValidatorFn } from '@angular/forms';
 import type { ErrorStateMatcher } from '@angular/material/core';
 import { MatFormFieldModule } from '@angular/material/form-field';
@@ -76,18 +77,14 @@ export class QuantityField {
   readonly hint = input('');
 
   protected readonly atOnce = atOnce;
-  private readonly readable: ValidatorFn = (control) => {
-    const read = this.read(String(control.value));
-    return read.ok ? null : { unread: read.message };
-  };
-  protected readonly control = new FormControl('', {
-    nonNullable: true,
-    validators: [
-      (control) => untracked(() => this.readable(control)),
-      () => untracked(() => (this.fault() === undefined ? null : { engine: this.fault() })),
-    ],
-  });
-  private readonly text = toSignal(this.control.valueChanges, { initialValue: '' });
+  protected readonly control = new FormControl('', { nonNullable: true });
+  private readonly readable: ValidatorFn = (control) =>
+    untracked(() => {
+      const read = this.read(String(control.value));
+      if (!read.ok) return { unread: read.message };
+      return this.fault() === undefined ? null : { engine: this.fault() };
+    });
+  private readonly text = signal('');
 
   protected readonly error = computed(() => {
     this.text();
@@ -106,23 +103,31 @@ export class QuantityField {
   constructor() {
     effect(() => {
       const value = this.value();
-      untracked(() => {
-        const shown = this.read(this.control.value);
-        if (shown.ok && shown.value === value && this.control.value !== '') return;
-        if (this.control.dirty && !shown.ok) return;
-        this.control.reset(this.write(value));
-      });
+      untracked(() => this.show(value));
     });
     effect(() => {
       this.fault();
+      // Inputs may be read from here on, not while the field is made.
+      if (!this.control.hasValidator(this.readable)) this.control.addValidators(this.readable);
       this.control.updateValueAndValidity({ emitEvent: false });
     });
     this.control.valueChanges.pipe(takeUntilDestroyed()).subscribe((text) => {
+      this.text.set(text);
       const read = this.read(text);
       this.unread.note(this, !read.ok);
       if (read.ok && read.value !== this.value()) this.value.set(read.value);
     });
     inject(DestroyRef).onDestroy(() => this.unread.note(this, false));
+  }
+
+  /** Writes a value that came from elsewhere; a text that says the same, or is not read yet, stays. */
+  private show(value: number | null): void {
+    const read = this.read(this.control.value);
+    if (read.ok ? sameValue(read.value, value) : this.control.dirty) return;
+    const text = this.write(value);
+    this.control.reset(text, { emitEvent: false });
+    this.text.set(text);
+    this.unread.note(this, false);
   }
 
   private read(
@@ -142,8 +147,14 @@ export class QuantityField {
 
   private write(value: number | null): string {
     if (value === null) return '';
-    const shown = Number(fromSi(value, this.unit()).toPrecision(10));
+    const shown = Number(fromSi(value, this.unit()).toPrecision(7));
     const space = this.unit().startsWith('°') || this.unit() === '' ? '' : ' ';
     return `${shown}${space}${this.unit()}`;
   }
+}
+
+/** To the digits that the field writes. */
+function sameValue(a: number | null, b: number | null): boolean {
+  if (a === null || b === null) return a === b;
+  return Math.abs(a - b) <= 1e-6 * Math.max(Math.abs(a), Math.abs(b));
 }

@@ -1,3 +1,4 @@
+import { DOCUMENT } from '@angular/common';
 import { ChangeDetectionStrategy, Component, computed, inject } from '@angular/core';
 import { MatButton } from '@angular/material/button';
 import { Icon } from '../../../ui/icon/icon';
@@ -20,6 +21,7 @@ import { Traces } from './traces';
   changeDetection: ChangeDetectionStrategy.OnPush,
 })
 export class CalculationSheet {
+  private readonly window = inject(DOCUMENT).defaultView;
   protected readonly draft = inject(Draft);
   protected readonly live = inject(LiveAnswer);
   protected readonly whatIf = inject(WhatIf);
@@ -43,4 +45,9 @@ export class CalculationSheet {
     const fault = this.live.fault();
     return fault?.code === 'empty' ? null : fault;
   });
+
+  /** The plan and the sheet, as the browser prints or saves them. */
+  protected print(): void {
+    this.window?.print();
+  }
 }

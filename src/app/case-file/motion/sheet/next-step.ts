@@ -27,6 +27,9 @@ interface Step {
     }
   `,
   styles: `
+    :host {
+      display: contents;
+    }
     .step {
       display: flex;
       flex-wrap: wrap;

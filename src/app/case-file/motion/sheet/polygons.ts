@@ -40,24 +40,31 @@ import { VectorPolygon } from '../../../ui/vector-polygon/vector-polygon';
 })
 export class Polygons {
   readonly working = input.required<Working>();
+  readonly shorten = input.required<(tex: string) => string>();
 
+  /** The last equation of each level: the one that gives the asked point. */
   protected readonly polygons = computed(() =>
-    this.working().steps.flatMap((step, index) =>
-      step.arrows.length < 2
-        ? []
-        : [
-            {
-              arrows: step.arrows.map((arrow) => polygonArrow(arrow, step.level)),
-              unit: step.level === 'velocity' ? 'm/s' : 'm/s²',
-              caption: `Step ${index + 1}, ${step.level} polygon`,
-            },
-          ],
-    ),
+    (['velocity', 'acceleration'] as const).flatMap((level) => {
+      const { steps } = this.working();
+      const index = steps.findLastIndex((step) => step.level === level && step.arrows.length > 1);
+      if (index < 0) return [];
+      return [
+        {
+          arrows: steps[index].arrows.map((arrow) => polygonArrow(arrow, level, this.shorten())),
+          unit: level === 'velocity' ? 'm/s' : 'm/s²',
+          caption: `Step ${index + 1}, ${level} polygon`,
+        },
+      ];
+    }),
   );
 }
 
-function polygonArrow(arrow: Arrow, level: 'velocity' | 'acceleration'): PolygonArrow {
-  const { symbol, index } = labelOf(arrow.tex);
+function polygonArrow(
+  arrow: Arrow,
+  level: 'velocity' | 'acceleration',
+  shorten: (tex: string) => string,
+): PolygonArrow {
+  const { symbol, index } = labelOf(shorten(arrow.tex));
   return {
     symbol,
     index,
@@ -69,25 +76,31 @@ function polygonArrow(arrow: Arrow, level: 'velocity' | 'acceleration'): Polygon
   };
 }
 
-const signs: Readonly<Record<string, string>> = {
-  omega: 'ω',
-  alpha: 'α',
-  times: '×',
-  dot: '',
-  cdot: '·',
-};
+const signs: Readonly<Record<string, string>> = { omega: 'ω', alpha: 'α', times: '×', cdot: '·' };
 
-/** TeX of one vector as plain text: "\\mathbf v_{\\text{LR}/G}" is v with the index LR/G. */
+/**
+ * TeX of one vector as a short text: "\\mathbf v_{\\text{LR}/G}" is v with the index LR/G. A term of a
+ * rotation is called by what it is: v, aᵗ (along) or aⁿ (toward the centre) of one point to another.
+ */
 export function labelOf(tex: string): { symbol: string; index: string } {
-  const plain = tex
+  const apart = /\\mathbf r_\{(.*)\}/.exec(tex);
+  if (apart !== null) {
+    const symbol = /\\alpha/.test(tex) ? 'aᵗ' : /\^\{?2|times.*times/.test(tex) ? 'aⁿ' : 'v';
+    return { symbol, index: plain(apart[1]) };
+  }
+  const slide = /\\d?dot s_\{(.*?)\}\\?[, ]*\\mathbf u/.exec(tex);
+  if (slide !== null) return { symbol: tex.includes('\\ddot') ? 'a' : 'v', index: plain(slide[1]) };
+  const parts = /^\\mathbf ([a-z])_\{(.*)\}$/.exec(tex.trim());
+  return parts === null
+    ? { symbol: plain(tex), index: '' }
+    : { symbol: parts[1], index: plain(parts[2]) };
+}
+
+const plain = (tex: string): string =>
+  tex
     .replace(/\\(?:mathbf|mathrm|text|boldsymbol|vec)\b/g, '')
     .replace(/\\([a-z]+)/g, (_, name: string) => signs[name] ?? '')
-    .replace(/\\[,;! ]/g, ' ');
-  const parts = /^([^_]*)_\{(.*)\}$/.exec(plain.trim());
-  const clean = (text: string) => text.replace(/[{}]/g, '').replace(/\s+/g, ' ').trim();
-  // A product is written as it stands.
-  if (parts === null || plain.includes('×')) {
-    return { symbol: clean(plain.replaceAll('_', '')), index: '' };
-  }
-  return { symbol: clean(parts[1]), index: clean(parts[2]) };
-}
+    .replace(/\\[,;! ]/g, ' ')
+    .replace(/[{}_]/g, '')
+    .replace(/\s+/g, ' ')
+    .trim();

@@ -64,8 +64,12 @@ export class ResidualTable {
   );
 }
 
+/** What is less, in SI, is rounding of the arithmetic. */
+const rounding = 1e-9;
+
 /** Directions in degrees, everything else in SI. */
-function shown({ part, level, residual }: Residual): string {
+function shown({ part, level, residual: found }: Residual): string {
+  const residual = Math.abs(found) < rounding ? 0 : found;
   if (part === 'direction') return `${showPlain((residual * 180) / Math.PI, 2)}°`;
   if (part === 'value') return showPlain(residual, 2);
   return `${showPlain(residual, 2)} ${level === 'velocity' ? 'm/s' : 'm/s²'}`;

@@ -14,6 +14,7 @@ import { PoseFit } from './pose-fit';
 import { RelativeMotionPart } from './relative-motion';
 import { ResidualTable } from './residual-table';
 import { SpeedTable } from './speed-table';
+import { shortNames } from './tex-names';
 import { Traces } from './traces';
 import { VerdictBox } from './verdict';
 import { WorkingPart } from './working-part';
@@ -52,10 +53,11 @@ export class SheetBody {
   protected readonly branches = computed<readonly MotionBranch[]>(
     () => this.solution()?.branches ?? [],
   );
-  private readonly names = computed(() => namesIn(this.document()));
+  protected readonly names = computed(() => namesIn(this.document()));
   protected readonly bodyName = computed(() => this.names().body);
   protected readonly pointName = computed(() => this.names().point);
   protected readonly nameOf = computed(() => this.traces.namesOf(this.data(), this.document()));
+  protected readonly shorten = computed(() => shortNames(this.data().answer));
   protected readonly overDetermined = computed(() => (this.solution()?.redundancy ?? 0) > 0);
   protected readonly unplaced = computed(() => {
     const { unplaced } = this.data().answer;

@@ -1,5 +1,11 @@
-import type { MotionSolution, MotionStatus } from '#shared/engine/documents/motion-solution';
+import type {
+  Level,
+  MotionSolution,
+  MotionStatus,
+  Suggestion,
+} from '#shared/engine/documents/motion-solution';
 import { showPlain } from '#shared/units/rounding';
+import type { Names } from '../names';
 
 /** The standing of an answer: whether it may be leaned on. State is told by the words, too. */
 export type Standing = 'sound' | 'open' | 'broken';
@@ -33,11 +39,6 @@ export function verdictOf(solution: MotionSolution): Verdict {
     title: titles[solution.status],
     says: [
       ...saysOf(solution),
-      ...(solution.status !== 'under-determined' && acceleration?.status === 'under-determined'
-        ? [
-            `The accelerations are not fixed: ${acceleration.unknowns} unknowns, ${acceleration.rank} independent equations.`,
-          ]
-        : []),
       ...(velocity.status === 'over-determined' || acceleration?.status === 'over-determined'
         ? [suspectsOf(solution)]
         : []),
@@ -89,6 +90,46 @@ function suspectsOf(solution: MotionSolution): string {
     : 'Some knowns do not fit the others (normalised residual over 3.29, that is 1 in 1000):';
 }
 
-/** "velocity direction at trailer.axle", as the engine names it, made a sentence. */
-export const freeSentence = (motion: string): string =>
-  `${motion.charAt(0).toUpperCase()}${motion.slice(1)}${motion.endsWith('.') ? '' : '.'}`;
+/** What a level leaves free, and the further known that would settle it. */
+export interface Lack {
+  readonly level: Level;
+  readonly free: readonly string[];
+  readonly helps: readonly string[];
+}
+
+const mostHelps = 4;
+
+/** What is not fixed, velocities first: as long as they are free the accelerations cannot be asked. */
+export function lacksOf(solution: MotionSolution, names: Names): Lack[] {
+  return (['velocity', 'acceleration'] as const).flatMap((level) => {
+    const free = solution.free.filter((one) => one.level === level);
+    if (free.length === 0) return [];
+    const helps = solution.suggestions.flatMap((one) => {
+      const ofVelocity = one.quantity === 'velocity' || one.quantity === 'angular-velocity';
+      return ofVelocity === (level === 'velocity') ? [helpWords(one, names)] : [];
+    });
+    return [
+      {
+        level,
+        free: free.map(({ motion }) => sentence(motion.replace(/^accelerations only: /, ''))),
+        helps: [
+          ...helps.slice(0, mostHelps),
+          ...(helps.length > mostHelps ? ['the same of another point'] : []),
+        ],
+      },
+    ];
+  });
+}
+
+function helpWords(one: Suggestion, names: Names): string {
+  if (!('at' in one)) {
+    return one.quantity === 'angular-velocity'
+      ? `how fast ${names.body(one.body)} turns`
+      : `how the turning of ${names.body(one.body)} changes`;
+  }
+  const part = one.part === 'components' ? '' : `the ${one.part} of `;
+  return `${part}the ${one.quantity} of ${names.point(one.at)}`;
+}
+
+const sentence = (text: string): string =>
+  `${text.charAt(0).toUpperCase()}${text.slice(1)}${text.endsWith('.') ? '' : '.'}`;

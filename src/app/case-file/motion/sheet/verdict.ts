@@ -2,7 +2,8 @@ import { ChangeDetectionStrategy, Component, computed, input, output } from '@an
 import type { MotionSolution } from '#shared/engine/documents/motion-solution';
 import { showPlain } from '#shared/units/rounding';
 import { Icon } from '../../../ui/icon/icon';
-import { freeSentence, verdictOf } from './verdict-words';
+import type { Names } from '../names';
+import { lacksOf, verdictOf } from './verdict-words';
 
 /** What the answer says of itself: how firm it is, what is free, what clashes, what would settle it. */
 @Component({
@@ -22,21 +23,33 @@ import { freeSentence, verdictOf } from './verdict-words';
             >{{ $last ? '.' : ', ' }}
           }
         </p>
-        @if (solution().free.length > 0) {
+        @if (velocityLack(); as lack) {
           <ul>
-            @for (free of solution().free; track $index) {
-              <li>{{ sentence(free.motion) }}</li>
+            @for (motion of lack.free; track $index) {
+              <li>{{ motion }}</li>
             }
           </ul>
-        }
-        @if (solution().helps.length > 0) {
-          <p>
-            <strong>One further known would settle it:</strong>
-            {{ solution().helps.join('; or ') }}.
-          </p>
+          @if (lack.helps.length > 0) {
+            <p>
+              <strong>One further known would settle it:</strong> {{ lack.helps.join('; or ') }}.
+            </p>
+          }
         }
       </div>
     </div>
+    @if (accelerationLack(); as lack) {
+      <details>
+        <summary>The accelerations are not fixed.</summary>
+        <ul>
+          @for (motion of lack.free; track $index) {
+            <li>{{ motion }}</li>
+          }
+        </ul>
+        @if (lack.helps.length > 0) {
+          <p>One further known would settle it: {{ lack.helps.join('; or ') }}.</p>
+        }
+      </details>
+    }
     @for (warning of solution().warnings; track $index) {
       <p class="warning"><ui-icon name="warning" /> {{ warning }}</p>
     }
@@ -82,6 +95,13 @@ import { freeSentence, verdictOf } from './verdict-words';
       text-decoration: underline;
       cursor: pointer;
     }
+    details {
+      color: var(--muted);
+      font-size: 14px;
+    }
+    summary {
+      cursor: pointer;
+    }
     .warning {
       padding-left: 12px;
     }
@@ -90,13 +110,20 @@ import { freeSentence, verdictOf } from './verdict-words';
 })
 export class VerdictBox {
   readonly solution = input.required<MotionSolution>();
+  readonly names = input.required<Names>();
   /** What people call the joint or known with this id. */
   readonly nameOf = input.required<(id: string) => string>();
   /** A joint or known was asked for. */
   readonly traced = output<string>();
 
   protected readonly verdict = computed(() => verdictOf(this.solution()));
-  protected readonly sentence = freeSentence;
+  private readonly lacks = computed(() => lacksOf(this.solution(), this.names()));
+  protected readonly velocityLack = computed(
+    () => this.lacks().find(({ level }) => level === 'velocity') ?? null,
+  );
+  protected readonly accelerationLack = computed(
+    () => this.lacks().find(({ level }) => level === 'acceleration') ?? null,
+  );
   protected readonly leaning = computed(() => {
     const { condition } = this.solution();
     return condition === null ? null : `Condition number ${showPlain(condition, 2)}.`;

@@ -15,13 +15,15 @@ import { stepsOf } from './working-steps';
 export class WorkingPart {
   readonly working = input.required<Working>();
   readonly knowns = input.required<readonly Known[]>();
+  /** Short names in the equations. */
+  readonly shorten = input.required<(tex: string) => string>();
   /** What people call the known, mark or joint with this id. */
   readonly nameOf = input.required<(id: string) => string>();
   /** The known or joint that a number came from was asked for. */
   readonly traced = output<string>();
 
   protected readonly levels = computed(() => {
-    const steps = stepsOf(this.working(), this.knowns());
+    const steps = stepsOf(this.working(), this.knowns(), this.shorten());
     return (['velocity', 'acceleration'] as const)
       .map((level) => ({
         level,

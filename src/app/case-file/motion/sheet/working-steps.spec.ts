@@ -91,7 +91,12 @@ describe('the label of an arrow', () => {
     expect(labelOf(tex)).toEqual({ symbol, index });
   });
 
-  it('writes a product as it stands', () => {
-    expect(labelOf('\\omega_{rod}\\,\\mathbf k\\times\\mathbf r_{B/A}').symbol).toContain('×');
+  it('calls a term of a rotation by what it is', () => {
+    expect(labelOf('\\omega\\,\\mathbf k\\times\\mathbf r_{B/A}')).toEqual({
+      symbol: 'v',
+      index: 'B/A',
+    });
+    expect(labelOf('\\alpha\\,\\mathbf k\\times\\mathbf r_{B/A}').symbol).toBe('aᵗ');
+    expect(labelOf('-\\omega^2\\,\\mathbf r_{B/A}').symbol).toBe('aⁿ');
   });
 });

@@ -14,6 +14,8 @@ export interface ShownStep {
   readonly number: number;
   readonly level: WorkingStep['level'];
   readonly kind: WorkingKind;
+  /** Something that was given: its value says all, in one line. */
+  readonly given: boolean;
   /** "known, direction only", "step", "result". */
   readonly label: string;
   readonly text: string;
@@ -35,29 +37,36 @@ export interface ShownResult {
 }
 
 /** The steps of a derivation as the sheet writes them; they are numbered through. */
-export function stepsOf(working: Working, knowns: readonly Known[]): ShownStep[] {
+export function stepsOf(
+  working: Working,
+  knowns: readonly Known[],
+  shorten: (tex: string) => string = (tex) => tex,
+): ShownStep[] {
   const byId = new Map(knowns.map((known) => [known.id, known]));
   return working.steps.map((step, index): ShownStep => {
     const from = step.uses.flatMap((use) =>
       use.kind === 'known' || use.kind === 'joint' ? [use.id] : [],
     );
+    const given = step.kind === 'known' || step.kind === 'adjusted';
     return {
       number: index + 1,
+      given,
       level: step.level,
       kind: step.kind,
       label: labelOf(step.kind, from.length === 1 ? byId.get(from[0]) : undefined),
-      text: step.text,
+      // What is free, and what would settle it, stands with the verdict.
+      text: step.kind === 'open' ? step.text.split('. Still free')[0] : step.text,
       from: [...new Set(from)],
-      equations: step.equations.map((equation) => ({
+      equations: (given && step.results.length > 0 ? [] : step.equations).map((equation) => ({
         axis: equation.role === 'x' || equation.role === 'y' ? equation.role : '',
-        tex: equation.tex,
+        tex: shorten(equation.tex),
       })),
       count:
         step.kind === 'step' || step.scalarEquations > 0
           ? countOf(step.scalarEquations, step.unknowns.length)
           : '',
-      unknowns: step.unknowns,
-      results: step.results.map(resultOf),
+      unknowns: step.unknowns.map((unknown) => ({ ...unknown, tex: shorten(unknown.tex) })),
+      results: step.results.map((result) => resultOf(result, shorten)),
     };
   });
 }
@@ -84,7 +93,10 @@ function countOf(equations: number, unknowns: number): string {
 /** Directions are read in degrees. */
 const unitOf = (unit: Unit) => (unit === 'rad' ? '°' : unit === '1/m' ? '' : unit);
 
-function resultOf({ symbol, value, sigma }: WorkingQuantity): ShownResult {
+function resultOf(
+  { symbol, value, sigma }: WorkingQuantity,
+  shorten: (tex: string) => string,
+): ShownResult {
   const unit = unitOf(symbol.unit);
   const half = coverage95 * (sigma ?? 0);
   const ranged = { value, low: value - half, high: value + half };
@@ -93,7 +105,7 @@ function resultOf({ symbol, value, sigma }: WorkingQuantity): ShownResult {
   const shown = known ? figure.value : showPlain(unit === '°' ? (value * 180) / Math.PI : value, 4);
   const space = unit === '°' || unit === '' ? '' : ' ';
   return {
-    tex: symbol.tex,
+    tex: shorten(symbol.tex),
     says: symbol.text,
     value: `${shown}${space}${symbol.unit === '1/m' ? ' 1/m' : unit}`,
     interval: known ? `[${figure.low}, ${figure.high}]` : '',
