@@ -27,7 +27,7 @@ export function recomputeReport(text: string, name: string): RecomputeReport {
       );
     else
       lines.push(
-        `  result     DIFFERENT in ${differences.length} places`,
+        `  result     DIFFERENT in ${differences.length} ${differences.length === 1 ? 'place' : 'places'}`,
         ...differences
           .slice(0, mostShown)
           .map(

@@ -6,6 +6,10 @@ import { poseProblem } from '../documents/pose-problem';
 import { poseSolution } from '../documents/pose-solution';
 import { reconstructionDocument } from '../documents/reconstruction';
 import { stationAnswer, stationProblem } from '../documents/station';
+import {
+  stationUncertaintyProblem,
+  stationUncertaintySolution,
+} from '../documents/station-uncertainty';
 import { worksheetProblem, worksheetSolution } from '../documents/worksheet';
 
 const documents = {
@@ -17,6 +21,8 @@ const documents = {
   reconstruction: reconstructionDocument,
   'station-problem': stationProblem,
   'station-answer': stationAnswer,
+  'station-uncertainty-problem': stationUncertaintyProblem,
+  'station-uncertainty-solution': stationUncertaintySolution,
   'worksheet-problem': worksheetProblem,
   'worksheet-solution': worksheetSolution,
 };

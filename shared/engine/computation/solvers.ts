@@ -5,10 +5,14 @@ import { motionSolution } from '../documents/motion-solution';
 import { poseProblem } from '../documents/pose-problem';
 import { poseSolution } from '../documents/pose-solution';
 import { stationAnswer, stationProblem } from '../documents/station';
+import {
+  stationUncertaintyProblem,
+  stationUncertaintySolution,
+} from '../documents/station-uncertainty';
 import { worksheetProblem, worksheetSolution } from '../documents/worksheet';
 import { solveInstant } from '../instant/index';
 import { fitPoses } from '../pose/index';
-import { solveStation } from '../reconstruction/index';
+import { solveStation, stationUncertainty } from '../reconstruction/index';
 import { solveWorksheet } from '../worksheets/index';
 
 /** Computes one kind of document: what it takes, what it gives, and how. */
@@ -46,6 +50,15 @@ export const solvers: Readonly<Partial<Record<ComputationKind, Solver>>> = {
     stationAnswer,
     solveStation,
     ({ failure, solution }) => failure?.code ?? solution?.status ?? 'poses only',
+  ),
+  'station-uncertainty': solver(
+    stationUncertaintyProblem,
+    stationUncertaintySolution,
+    stationUncertainty,
+    ({ quantities }) =>
+      quantities.every(({ simulated }) => simulated?.agrees !== false)
+        ? 'confirmed'
+        : 'not confirmed',
   ),
   worksheet: solver(worksheetProblem, worksheetSolution, solveWorksheet, ({ warnings }) =>
     warnings.length === 0 ? 'determined' : 'with warnings',

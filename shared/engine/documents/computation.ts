@@ -9,6 +9,7 @@ export const computationKinds = [
   'pose',
   'instant',
   'station',
+  'station-uncertainty',
   'run',
   'impact',
   'worksheet',

@@ -42,6 +42,8 @@ export interface TraceTangent {
 export interface TraceOptions {
   /** Most points that the local fit takes, nearest to the foot. */
   readonly window?: number;
+  /** False: exactly so many points, whether a parabola follows them or not. */
+  readonly shrinks?: boolean;
 }
 
 const usualWindow = 9;
@@ -81,7 +83,8 @@ export function traceTangent(
   for (;;) {
     const fit = fitWindow(nearest(points, foot, count), foot);
     const smaller = Math.max(leastWindow, count - 2);
-    if (fit.pValue === null || fit.pValue >= bends || smaller >= count) return fit;
+    const fits = fit.pValue === null || fit.pValue >= bends;
+    if (options.shrinks === false || fits || smaller >= count) return fit;
     count = smaller;
   }
 }

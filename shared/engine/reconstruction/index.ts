@@ -4,3 +4,4 @@ export { poseOfStation, poseProblemOf, type StationPose } from './pose-of-statio
 export { answerStation, solveStation } from './solve-station';
 export { speedsOf } from './speeds';
 export { stationProblemOf } from './station-problem';
+export { stationUncertainty } from './station-uncertainty';

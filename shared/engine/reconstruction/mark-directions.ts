@@ -3,11 +3,18 @@ import { EngineError } from '../errors';
 import { alongTrace } from '../geometry/trace-order';
 import { traceTangent } from '../geometry/trace-tangent';
 
+/** Points of its trace that the tangent at each mark takes. */
+export type Windows = ReadonlyMap<string, number>;
+
 /**
- * The tangents of the traces at the marks whose direction the station uses.
+ * The tangents of the traces at the marks whose direction the station uses. `windows` fixes how many
+ * points each takes; without it the traces themselves decide.
  * Throws EngineError `not-enough-marks` when a mark is on no trace, or is alone on it.
  */
-export function markDirections({ station, marks }: StationProblem): MarkDirection[] {
+export function markDirections(
+  { station, marks }: StationProblem,
+  windows: Windows | null = null,
+): MarkDirection[] {
   const byId = new Map(marks.map((mark) => [mark.id, mark]));
   return station.marks
     .filter(({ direction }) => direction)
@@ -20,7 +27,8 @@ export function markDirections({ station, marks }: StationProblem): MarkDirectio
           `station.marks.${markId}.direction`,
           `The mark "${mark?.label ?? markId}" has no direction: it takes a trace of at least two points.`,
         );
-      const tangent = traceTangent(points, mark.at);
+      const window = windows?.get(markId);
+      const tangent = traceTangent(points, mark.at, { window, shrinks: window === undefined });
       return {
         mark: markId,
         body,

@@ -2,7 +2,7 @@ import type { ReconstructionDocument } from '../documents/reconstruction';
 import type { StationAnswer, StationMark, StationProblem } from '../documents/station';
 import { EngineError } from '../errors';
 import { solveInstant } from '../instant/index';
-import { markDirections } from './mark-directions';
+import { markDirections, type Windows } from './mark-directions';
 import { motionOfStation } from './motion-of-station';
 import { poseOfStation } from './pose-of-station';
 import { speedsOf } from './speeds';
@@ -14,9 +14,12 @@ import { stationProblemOf } from './station-problem';
  * This is the one place where a reconstruction becomes engine problems, in the browser as on the
  * server. What stops the answer (too few marks, a joint that does not close) comes back in
  * `failure` with what was reached before it, so that the plan can show the poses all the same;
- * anything but an EngineError is thrown on.
+ * anything but an EngineError is thrown on. `windows` as in `markDirections`.
  */
-export function solveStation(problem: StationProblem): StationAnswer {
+export function solveStation(
+  problem: StationProblem,
+  windows: Windows | null = null,
+): StationAnswer {
   const answer: StationAnswer = {
     format: 'centrode.station-answer/1',
     poseProblem: null,
@@ -35,7 +38,7 @@ export function solveStation(problem: StationProblem): StationAnswer {
     answer.pose = pose.solution;
     answer.unplaced.push(...pose.unplaced);
     answer.warnings.push(...pose.solution.warnings);
-    answer.directions.push(...markDirections(problem));
+    answer.directions.push(...markDirections(problem, windows));
     const motion = motionOfStation(problem, pose.solution, answer.directions);
     answer.problem = motion.problem;
     answer.warnings.push(...motion.warnings);
