@@ -12,6 +12,7 @@ import {
 import { coverageFactor } from '#shared/engine/uncertainty/interval';
 import { monteCarlo, monteCarloToDigits } from '#shared/engine/uncertainty/monte-carlo';
 import { propagate, withDifferences, type Input } from '#shared/engine/uncertainty/propagation';
+import { Random } from '#shared/engine/uncertainty/random';
 import { independent, jointlyNormal, type Distribution } from '#shared/engine/uncertainty/sampling';
 import { readExpression } from '#shared/engine/worksheets/expression';
 import { caseFile, expectClose, nameOf } from './case-file';
@@ -195,6 +196,44 @@ describe('law of propagation of uncertainty', () => {
         [{ between: ['a', 'c'], coefficient: 0.1 }],
       ),
     ).toThrow(expect.objectContaining({ code: 'unknown-reference' }));
+  });
+});
+
+describe('coverage intervals (seeded)', () => {
+  const d30 = caseFile<unknown, Numbers>('D30_coverage');
+  const trials = 10_000;
+  // the case allows its own noise; four standard deviations of ours come on top
+  const abs = 0.008 + 4 * Math.sqrt((0.95 * 0.05) / trials);
+
+  it(`${nameOf(d30)}, mean of five readings: k = 1.96 holds too little, t what it says`, () => {
+    const random = new Random(41);
+    let normal = 0;
+    let student = 0;
+    for (let i = 0; i < trials; i++) {
+      const readings = Array.from({ length: 5 }, () => random.normal());
+      const mean = readings.reduce((sum, r) => sum + r, 0) / 5;
+      const u = Math.sqrt(readings.reduce((sum, r) => sum + (r - mean) ** 2, 0) / 20);
+      if (Math.abs(mean) <= coverageFactor(0.95) * u) normal++;
+      if (Math.abs(mean) <= coverageFactor(0.95, 4) * u) student++;
+    }
+    expectClose(normal / trials, d30.expected['mean_of_5_with_k=1.96_(known_to_be_low)'], { abs });
+    expectClose(normal / trials, d30.expected['exact_coverage_k1.96_n5'], { abs });
+    expectClose(student / trials, d30.expected['mean_of_5_with_t'], { abs });
+  });
+
+  it(`${nameOf(d30)}, slide to stop`, () => {
+    const random = new Random(42);
+    const formula = model('sqrt(2 * 9.80665 * f * d)', ['f', 'd']);
+    const truth = formula([0.7, 25]).value;
+    let held = 0;
+    for (let i = 0; i < trials; i++) {
+      const { interval } = propagate(formula, [
+        { id: 'f', value: 0.7 + 0.05 * random.normal(), sigma: 0.05 },
+        { id: 'd', value: 25 + 0.3 * random.normal(), sigma: 0.3 },
+      ]);
+      if (interval.low <= truth && truth <= interval.high) held++;
+    }
+    expectClose(held / trials, d30.expected['slide_to_stop_coverage_95'], { abs });
   });
 });
 
