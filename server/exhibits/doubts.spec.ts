@@ -26,7 +26,13 @@ const sound: CameraMetadata = {
 const usual: Circumstances = {
   takenInAt: new Date('2026-11-05T08:00:00Z'),
   collectedAt: new Date('2026-11-03T14:00:00Z'),
+  incidentOn: '2026-11-02',
   middle: { latitude: 47.3, longitude: 8.25 },
+};
+const at2019 = {
+  takenAtLocal: '2019-01-01T00:00:09',
+  changedAtLocal: null,
+  satelliteTime: null,
 };
 const codes = (change: Partial<CameraMetadata>, about: Partial<Circumstances> = {}): string[] =>
   doubtsOf({ ...sound, ...change }, { ...usual, ...about }).map(({ code }) => code);
@@ -37,6 +43,8 @@ describe('doubts about a picture', () => {
   });
 
   it.each<[string, string[], Partial<CameraMetadata>, Partial<Circumstances>]>([
+    ['its clock was never set', ['before-incident'], { ...at2019 }, {}],
+    ['an editing program wrote it', ['edited'], { software: 'Marl Retouch 4.2' }, {}],
     ['no time was written', ['no-time'], { takenAtLocal: null, changedAtLocal: null }, {}],
     ['no zone was written', ['zone-unknown'], { takenAtOffset: null }, {}],
     [

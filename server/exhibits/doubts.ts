@@ -8,6 +8,8 @@ export interface Circumstances {
   readonly takenInAt: Date;
   /** When the exhibit was collected, if somebody said so. */
   readonly collectedAt: Date | null;
+  /** Day of the incident, if the brief tells it. */
+  readonly incidentOn: string | null;
   /** Where the pictures of the case were taken for the most part; null if too few say. */
   readonly middle: Position | null;
 }
@@ -21,6 +23,7 @@ const minute = 60 * 1000;
 const hour = 60 * minute;
 /** Zones reach from UTC−12 to UTC+14: a local time alone fixes the moment only to this. */
 const earliestZone = 14 * hour;
+const latestZone = 12 * hour;
 /** A phone's position may be off by hundreds of metres between buildings (common practice). */
 const farMetres = 2000;
 /** Fewer positions do not tell where the scene is. */
@@ -78,6 +81,18 @@ function orderDoubts(metadata: CameraMetadata, about: Circumstances): Doubt[] {
       ),
     );
   }
+  const latest = metadata.takenAtOffset === null ? earliest + earliestZone + latestZone : earliest;
+  if (
+    about.incidentOn !== null &&
+    latest < Date.parse(`${about.incidentOn}T00:00:00Z`) - latestZone
+  ) {
+    doubts.push(
+      doubt(
+        'before-incident',
+        `By the camera's clock (${metadata.takenAtLocal?.replace('T', ' ')}) the picture was taken before the incident of ${about.incidentOn}.`,
+      ),
+    );
+  }
   return doubts;
 }
 
@@ -111,6 +126,9 @@ function clockDoubts({ takenAtLocal, takenAtOffset, satelliteTime }: CameraMetad
   ];
 }
 
+/** Words in the names of programs that alter pictures; no such list is complete. */
+const editors = /retouch|edit|paint|enhanc|convert|develop|studio|shop|room/i;
+
 function editDoubts({
   takenAtLocal,
   changedAtLocal,
@@ -123,6 +141,14 @@ function editDoubts({
       doubt(
         'edited',
         `The metadata tells of editing${by}: ask for the file as the camera wrote it.`,
+      ),
+    ];
+  }
+  if (software !== null && editors.test(software)) {
+    return [
+      doubt(
+        'edited',
+        `The file was written by "${software}", which sounds like an editing program.`,
       ),
     ];
   }

@@ -2,6 +2,7 @@ import { Op, QueryTypes } from 'sequelize';
 import type { Exhibit, ExhibitFile, PictureMetadata } from '#shared/contracts/exhibits';
 import { presentEvent } from '../custody/presenter';
 import { AccountRecord } from '../database/models/account';
+import { CaseRecord } from '../database/models/case';
 import { CustodyEventRecord } from '../database/models/custody';
 import { DerivativeRecord, ExhibitFileRecord, ExhibitRecord } from '../database/models/exhibit';
 import type { CameraMetadata } from '../store/metadata';
@@ -16,6 +17,7 @@ interface Surroundings {
   /** Numbers of the exhibits that hold a content, by its SHA-256. */
   readonly holdersOfContent: ReadonlyMap<string, readonly string[]>;
   readonly middle: Position | null;
+  readonly incidentOn: string | null;
   readonly names: ReadonlyMap<string, string>;
   readonly offers: ReadonlyMap<number, ReturnType<typeof presentEvent>>;
 }
@@ -34,6 +36,7 @@ export const presentNew = (record: ExhibitRecord, holder: AccountRecord): Exhibi
     pictured: new Set(),
     holdersOfContent: new Map(),
     middle: null,
+    incidentOn: null,
     names: new Map([[holder.id, holder.name]]),
     offers: new Map(),
   });
@@ -52,14 +55,23 @@ async function surroundingsOf(records: readonly ExhibitRecord[]): Promise<Surrou
       ['id', 'ASC'],
     ],
   });
-  const [pictured, holdersOfContent, middle, names, offers] = await Promise.all([
+  const [pictured, holdersOfContent, middle, incident, names, offers] = await Promise.all([
     picturedFiles(files),
     contentHolders(caseId, files),
     middlePosition(caseId),
+    CaseRecord.findByPk(caseId, { attributes: ['incidentOn'] }),
     namesOf(records),
     offersOf(caseId, records),
   ]);
-  return { files: grouped(files), pictured, holdersOfContent, middle, names, offers };
+  return {
+    files: grouped(files),
+    pictured,
+    holdersOfContent,
+    middle,
+    incidentOn: incident?.incidentOn ?? null,
+    names,
+    offers,
+  };
 }
 
 function present(record: ExhibitRecord, around: Surroundings): Exhibit {
@@ -132,7 +144,7 @@ function presentFile(
 function pictureOf(
   file: ExhibitFileRecord,
   exhibit: ExhibitRecord,
-  { middle }: Surroundings,
+  { middle, incidentOn }: Surroundings,
 ): PictureMetadata {
   const metadata = file.metadata === null ? null : (JSON.parse(file.metadata) as CameraMetadata);
   return {
@@ -150,6 +162,7 @@ function pictureOf(
     doubts: doubtsOf(metadata, {
       takenInAt: file.takenInAt,
       collectedAt: exhibit.collectedAt,
+      incidentOn,
       middle,
     }),
   };

@@ -1,3 +1,4 @@
+import { open } from 'node:fs/promises';
 import exifr from 'exifr';
 
 /** What a picture's own metadata says, as the camera wrote it; nothing is made of it here. */
@@ -51,7 +52,7 @@ export async function readMetadata(path: string): Promise<CameraMetadata | null>
 
 async function readTags(path: string): Promise<Record<string, unknown> | null> {
   try {
-    const tags = (await exifr.parse(path, {
+    const tags = (await exifr.parse(await beginningOf(path), {
       tiff: true,
       exif: true,
       gps: true,
@@ -66,6 +67,21 @@ async function readTags(path: string): Promise<Record<string, unknown> | null> {
   } catch {
     // Damaged metadata is not a reason to refuse the picture; it is then a picture without metadata.
     return null;
+  }
+}
+
+/** Metadata stand at the beginning. The library, given a path, leaves damaged files open. */
+const mostBytes = 16 * 1024 * 1024;
+
+async function beginningOf(path: string): Promise<Buffer> {
+  const file = await open(path, 'r');
+  try {
+    const { size } = await file.stat();
+    const buffer = Buffer.alloc(Math.min(size, mostBytes));
+    const { bytesRead } = await file.read(buffer, 0, buffer.length, 0);
+    return buffer.subarray(0, bytesRead);
+  } finally {
+    await file.close();
   }
 }
 
