@@ -11,7 +11,8 @@ export const cautions: readonly string[] = [
   'The archive is for the party that is named on it. Give it on only as the court or the law allows.',
 ];
 
-/** The line below the plan's title. */
-export const planCaption = (summary: ReleasedSummary): string =>
-  `${summary.laboratory}. Release ${summary.releaseNumber} to ${summary.party}, ${summary.releasedAt.slice(0, 10)}. ` +
-  'As measured; uncertainties in the table of marks.';
+/** The two lines below the plan's title. */
+export const planCaption = (summary: ReleasedSummary): [string, string] => [
+  `${summary.laboratory}, ${summary.releasedAt.slice(0, 10)}`,
+  `Release ${summary.releaseNumber} to ${summary.party}. Marks as measured, their uncertainties are in the table.`,
+];

@@ -5,7 +5,7 @@ import { tracesOf } from './survey-files';
 export interface PlanInput {
   readonly marks: readonly Mark[];
   readonly title: string;
-  readonly caption: string;
+  readonly caption: readonly string[];
   /** Bearing of the scene's +x axis, rad clockwise from north; null: no north arrow. */
   readonly xAxisBearing: number | null;
 }
@@ -138,11 +138,14 @@ export function planSvg(input: PlanInput): string {
     `<g fill="none" stroke="${chalk}" stroke-width=".35">${traces}${symbols}</g>` +
     `<g font-size="2.6">${names}</g>` +
     `<text x="${sheet.margin}" y="${foot + 8}" font-size="5" font-weight="700" font-family="Merriweather,serif">${escapeMarkup(input.title)}</text>` +
-    `<text x="${sheet.margin}" y="${foot + 14}" fill="${muted}">${escapeMarkup(input.caption)}</text>` +
-    `<g stroke-width=".4">${scaleBar(frame, sheet.margin, foot + 22)}` +
+    input.caption
+      .map((text, i) => ({ y: foot + 13 + 4.5 * i, text: escapeMarkup(text) }))
+      .map(({ y, text }) => `<text x="${sheet.margin}" y="${y}" fill="${muted}">${text}</text>`)
+      .join('') +
+    `<g stroke-width=".4">${scaleBar(frame, sheet.margin, foot + 24)}` +
     (input.xAxisBearing === null
       ? ''
-      : northArrow(input.xAxisBearing, sheet.width / 2 - 20, foot + 18)) +
-    `${legend(kinds, sheet.width / 2 + 10, foot + 7)}${legend(kinds, sheet.width / 2 + 10, foot + 7)}</g></svg>\n`
+      : northArrow(input.xAxisBearing, sheet.width / 2, foot + 18)) +
+    `${legend(kinds, sheet.width / 2 + 30, foot + 7)}${legend(kinds, sheet.width / 2 + 30, foot + 7)}</g></svg>\n`
   );
 }

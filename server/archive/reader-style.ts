@@ -56,6 +56,7 @@ td.n,th.n{text-align:right}td.n,.t{white-space:nowrap}
 small{color:var(--muted);font-size:13px}
 code,pre,.mono{font-family:'Atkinson Hyperlegible Mono',monospace;font-size:13px;overflow-wrap:anywhere}
 pre{background:var(--wash);padding:12px 14px;overflow-x:auto;white-space:pre-wrap}
+summary{cursor:pointer;color:var(--spruce);margin:10px 0}
 figure{margin:0}figure svg{width:100%;height:auto;border:1px solid var(--line);background:#FFFFFF}
 figcaption{color:var(--muted);font-size:13px}
 .caution{border-left:3px solid var(--chalk);padding-left:16px}

@@ -12,6 +12,8 @@ import { sourceOf } from './survey-files';
 
 /** The page shows this many marks; all of them are in the table beside it. */
 const mostMarks = 500;
+/** More than these are folded away until asked for. */
+const unfoldedMarks = 30;
 
 const day = (moment: string) => moment.slice(0, 10);
 /** Kept on one line. */
@@ -76,8 +78,9 @@ function marks(source: ArchiveSource): string {
     shown.length < all.length
       ? `<p>The first ${shown.length} of ${all.length} marks; all are in the table file.</p>`
       : '';
+  const open = all.length <= unfoldedMarks ? ' open' : '';
   return (
-    note +
+    `<details${open}><summary>${all.length} marks</summary>${note}` +
     table(
       ['Mark', 'Kind', 'Trace', 'Where from', 'x, m', 'y, m', 'u(x), cm', 'u(y), cm'],
       shown.map((mark) => [
@@ -91,7 +94,8 @@ function marks(source: ArchiveSource): string {
         cm(mark.covariance[1][1]),
       ]),
       4,
-    )
+    ) +
+    '</details>'
   );
 }
 

@@ -91,7 +91,7 @@ async function checkHeads(folder: string, ledger: Ledger, report: Report): Promi
     report.wrong('custody/ledger.jsonl', 'has no signature over its last event');
   }
   await checkOwnHead(folder, last, report);
-  return `${heads.length} heads, the last signed with key ${last.keyId} on ${last.signedAt}`;
+  return `signed heads: ${heads.length}, the last with key ${last.keyId} on ${last.signedAt}`;
 }
 
 /** The three files for openssl must say what the last head says. */
