@@ -146,6 +146,6 @@ export function planSvg(input: PlanInput): string {
     (input.xAxisBearing === null
       ? ''
       : northArrow(input.xAxisBearing, sheet.width / 2, foot + 18)) +
-    `${legend(kinds, sheet.width / 2 + 30, foot + 7)}${legend(kinds, sheet.width / 2 + 30, foot + 7)}</g></svg>\n`
+    `${legend(kinds, sheet.width / 2 + 30, foot + 7)}</g></svg>\n`
   );
 }

@@ -197,6 +197,7 @@ describe('what the archive holds', () => {
     const plan = await read('survey/plan.svg');
     expect(plan).toContain('width="420mm" height="297mm" viewBox="0 0 420 297"');
     expect(plan).toContain('Scale 1:100 on A3');
+    expect(plan.match(/>(gouge|point of rest|yaw mark)</g)).toHaveLength(3);
     // 31.5 m at 1:100 are 315 mm between the first mark and the point of rest.
     const at = [...plan.matchAll(/translate\(([\d.]+) ([\d.]+)\)/g)].map(([, x, y]) => [+x, +y]);
     expect(at[4][0] - at[0][0]).toBeCloseTo(315, 1);
