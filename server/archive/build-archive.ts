@@ -57,7 +57,7 @@ export async function buildArchive(
       signal: options.signal,
       progress: (bytes) => options.progress?.((0.7 * bytes) / total),
     });
-    await checkZip(temporary, folder, bag);
+    await checkZip(temporary, folder, bag, options.signal);
     await rename(temporary, target);
     const parent = await open(dirname(target));
     await parent.sync().finally(() => parent.close());

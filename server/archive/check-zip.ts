@@ -14,6 +14,7 @@ export async function checkZip(
   file: string,
   folder: string,
   expected: readonly BagEntry[],
+  signal?: AbortSignal,
 ): Promise<void> {
   const zip = await openPromise(file, { lazyEntries: true, autoClose: false });
   try {
@@ -26,7 +27,7 @@ export async function checkZip(
       if (found.uncompressedSize !== entry.size) {
         throw new ArchiveMismatch(entry.path, `has ${found.uncompressedSize} bytes in the archive`);
       }
-      if ((await sha512(await zip.openReadStreamPromise(found))) !== entry.sha512) {
+      if ((await sha512(await zip.openReadStreamPromise(found), signal)) !== entry.sha512) {
         throw new ArchiveMismatch(
           entry.path,
           'was not written as its record says (SHA-512 differs)',
@@ -41,8 +42,11 @@ export async function checkZip(
   }
 }
 
-async function sha512(stream: Readable): Promise<string> {
+async function sha512(stream: Readable, signal?: AbortSignal): Promise<string> {
   const hash = createHash('sha512');
-  for await (const chunk of stream) hash.update(chunk as Buffer);
+  for await (const chunk of stream) {
+    signal?.throwIfAborted();
+    hash.update(chunk as Buffer);
+  }
   return hash.digest('hex');
 }

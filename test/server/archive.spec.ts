@@ -252,10 +252,24 @@ describe('building', () => {
     await expect(buildArchive(changed, join(folder, 'changed.zip'))).rejects.toThrow('was changed');
   });
 
-  it('can be stopped', async () => {
-    const stop = AbortSignal.abort(new Error('stopped'));
-    await expect(
-      buildArchive(source, join(folder, 'stopped.zip'), { signal: stop }),
-    ).rejects.toThrow('stopped');
+  it.each([
+    ['before it begins', 0],
+    ['half way', 3],
+    ['while it is read back', 1000],
+  ])('can be stopped %s, and leaves nothing behind', async (_, entries) => {
+    const stop = new AbortController();
+    let written = 0;
+    const progress = () => {
+      written += 1;
+      if (written >= entries || written === bagFiles) stop.abort(new Error('stopped'));
+    };
+    const bagFiles = (await readdir(bag, { recursive: true, withFileTypes: true })).filter(
+      (entry) => entry.isFile(),
+    ).length;
+    if (entries === 0) stop.abort(new Error('stopped'));
+    const target = join(folder, 'stopped.zip');
+    const building = buildArchive(source, target, { signal: stop.signal, progress });
+    await expect(building).rejects.toThrow('stopped');
+    expect((await readdir(folder)).filter((name) => name.startsWith('stopped'))).toEqual([]);
   });
 });
