@@ -6,8 +6,53 @@ import { rigid } from './starts';
 /** Bodies named in a sentence before the rest are only counted. */
 const named = 4;
 
-/** One free motion in words and numbers; rates are per unit of its largest. */
-export const describeFree = (model: Model, s: State, level: Level, z: Float64Array): FreeMotion => {
+/** Free motions in words and numbers, each apart from the others as far as they allow. */
+export const describeFree = (
+  model: Model,
+  s: State,
+  level: Level,
+  free: readonly Float64Array[],
+): FreeMotion[] => apart(model, free).map((z) => describeOne(model, s, level, z));
+
+/**
+ * Another basis of the same motions (reduced echelon form, turning first): those in which nothing
+ * turns are by themselves, and of the others each turns a body that the rest do not.
+ */
+const apart = (model: Model, free: readonly Float64Array[]): Float64Array[] => {
+  const basis = free.map((z) => Float64Array.from(z));
+  const bodies = model.bodies.map((_, b) => b);
+  const columns = [...bodies.map((b) => 3 * b + 2), ...bodies.flatMap((b) => [3 * b, 3 * b + 1])];
+  const scale = (c: number): number => (c % 3 === 2 ? model.bodies[(c - 2) / 3].length : 1);
+  let done = 0;
+  for (const c of columns) {
+    let best = done;
+    for (let k = done; k < basis.length; k++)
+      if (Math.abs(basis[k][c]) > Math.abs(basis[best][c])) best = k;
+    if (done === basis.length) break;
+    if (Math.abs(basis[best][c]) * scale(c) < 1e-7 * sizeOf(basis[best], scale)) continue;
+    [basis[done], basis[best]] = [basis[best], basis[done]];
+    const pivot = basis[done];
+    basis.forEach((other, k) => {
+      if (k === done) return;
+      const by = other[c] / pivot[c];
+      for (let i = 0; i < other.length; i++) other[i] -= by * pivot[i];
+      other[c] = 0;
+    });
+    done++;
+  }
+  basis.forEach((z) => {
+    const size = sizeOf(z, scale);
+    for (let i = 0; i < z.length; i++)
+      if (Math.abs(z[i]) * (i < columns.length ? scale(i) : 1) < 1e-11 * size) z[i] = 0;
+  });
+  return basis;
+};
+
+const sizeOf = (z: Float64Array, scale: (c: number) => number): number =>
+  z.reduce((most, v, i) => (v === 0 ? most : Math.max(most, Math.abs(v) * scale(i))), 0);
+
+/** One free motion; rates are per unit of its largest. */
+const describeOne = (model: Model, s: State, level: Level, z: Float64Array): FreeMotion => {
   const unit = scaled(model, z);
   const bodies: FreeMotion['bodies'] = {};
   const phrases: string[] = [];

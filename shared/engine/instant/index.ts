@@ -81,7 +81,7 @@ const suggest = (answer: Answer, level: Level, judged: Judged) => {
 
 const describe = (answer: Answer, level: Level, judged: Judged | null) => {
   const state = answer.branches[0]?.state ?? stateOf(answer.model);
-  return (judged?.free ?? []).map((z) => describeFree(answer.model, state, level, z));
+  return describeFree(answer.model, state, level, judged?.free ?? []);
 };
 
 const clashOf = ({ model, tolerance, velocity, acceleration }: Answer): string[] => {

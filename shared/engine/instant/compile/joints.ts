@@ -41,6 +41,13 @@ export class References {
     return place;
   }
 
+  /** Distance of two places, m; 0 where rounding alone keeps them apart. */
+  distance(a: Place, b: Place): number {
+    const apart = norm(subtract(this.position(b), this.position(a)));
+    const largest = this.bodies.reduce((most, { length }) => Math.max(most, length), 0);
+    return apart > 1e-9 * largest ? apart : 0;
+  }
+
   /** Whether the body's pose follows from its joints. */
   follows(body: number): boolean {
     return body < this.ground && this.bodies[body].follows;
@@ -202,8 +209,8 @@ const compileLink = (
       ? references.place(j.b, `${field}.b`)
       : references.groundPlace(j.groundPoint ?? [0, 0]);
   differ(a, b, field);
-  const length = norm(subtract(references.position(b), references.position(a)));
-  if (!(length > 0))
+  const length = references.distance(a, b);
+  if (length === 0)
     throw new EngineError('zero-length', field, `The ends of the link ${j.id} coincide.`);
   references.limitSteps(a, length);
   references.limitSteps(b, length);
@@ -274,8 +281,8 @@ const compileGear = (
     );
   const b = references.place(j.b, `${field}.b`);
   differ(a, b, field);
-  const distance = norm(subtract(references.position(b), references.position(a)));
-  if (!(distance > 0))
+  const distance = references.distance(a, b);
+  if (distance === 0)
     throw new EngineError('coincident-points', field, `The centres of ${j.id} coincide.`);
   references.limitSteps(a, distance);
   references.limitSteps(b, distance);
