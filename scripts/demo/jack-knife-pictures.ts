@@ -53,14 +53,7 @@ export const JACK_KNIFE_SHOTS: readonly Shot[] = [
     28,
   ),
   shot(3, 'Unit at rest, from the far side', '08:47:33', [42.5, 1.5, 1.75], [28.5, -3.0, 1.4], 30),
-  shot(
-    4,
-    'Release 2 at board 3, with one-metre rod',
-    '08:53:10',
-    [11.2, 3.6, 1.5],
-    [18.2, -0.2, 0],
-    28,
-  ),
+  shot(4, 'Release 2 at board 3', '08:53:10', [11.2, 3.6, 1.5], [18.2, -0.2, 0], 28),
   shot(
     5,
     'End of the prints at the trailer axles',
