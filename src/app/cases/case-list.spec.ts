@@ -2,7 +2,6 @@ import type { HarnessLoader } from '@angular/cdk/testing';
 import { TestbedHarnessEnvironment } from '@angular/cdk/testing/testbed';
 import { TestBed } from '@angular/core/testing';
 import { MatButtonHarness } from '@angular/material/button/testing';
-import { MatInputHarness } from '@angular/material/input/testing';
 import { MatSortHarness } from '@angular/material/sort/testing';
 import { Router, provideRouter, withComponentInputBinding } from '@angular/router';
 import { RouterTestingHarness } from '@angular/router/testing';
@@ -91,7 +90,10 @@ describe('the case list', () => {
 
   it('when a text is typed, then the list follows and the address keeps it', async () => {
     await openAs('investigator');
-    await (await loader.getHarness(MatInputHarness)).setValue('press');
+    const find = page.routeNativeElement?.querySelector('input');
+    if (!find) throw new Error('There is no field to find a case by');
+    find.value = 'press';
+    find.dispatchEvent(new Event('input'));
     await page.fixture.whenStable();
     expect(titles()).toEqual(['Press 4']);
     expect(TestBed.inject(Router).url).toBe('/cases?find=press');

@@ -8,8 +8,6 @@ import {
   signal,
 } from '@angular/core';
 import { MatButton } from '@angular/material/button';
-import { MatFormFieldModule } from '@angular/material/form-field';
-import { MatInput } from '@angular/material/input';
 import { MatSortModule, type Sort } from '@angular/material/sort';
 import { Router, RouterLink } from '@angular/router';
 import { type CaseStage, type CaseSummary, listCases } from '#shared/contracts/cases';
@@ -48,8 +46,6 @@ const pageSize = 200;
     EmptyState,
     Icon,
     MatButton,
-    MatFormFieldModule,
-    MatInput,
     MatSortModule,
     PageTitle,
     ProblemMessage,
