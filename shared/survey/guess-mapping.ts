@@ -98,6 +98,9 @@ export function guessMapping(
   const numbers = (['x', 'y', 'height', 'sigmaX', 'sigmaY'] as const).flatMap((field) =>
     cellsOf(columns[field]),
   );
+  if ([columns.label, columns.x, columns.y].includes(null)) {
+    questions.push('Which columns hold the labels, x and y? The header does not say it.');
+  }
   const decimal = decimalOf(numbers);
   if (decimal === null) {
     const example = numbers.find((cell) => cell.includes(',')) ?? '';

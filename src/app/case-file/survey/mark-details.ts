@@ -24,7 +24,7 @@ import { correlationOf, heightOf, placeInTrace, sigmaOf, sourceOf, withSigma } f
     </dl>
     @if (mark().source.raw) {
       <p class="raw">
-        <span class="muted">word for word</span> <code>{{ mark().source.raw }}</code>
+        <span class="muted">word for word:&ngsp;</span><code>{{ mark().source.raw }}</code>
       </p>
     }
     @if (mayChange()) {

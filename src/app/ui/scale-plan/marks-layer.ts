@@ -35,7 +35,7 @@ export class MarksLayer {
     const styles = stylesIn(colours);
     const features: Feature[] = traces.map((trace) => {
       const feature = new Feature(new LineString(trace.path.map(pair)));
-      feature.setStyle(styles.trace);
+      feature.setStyle(trace.ground ? styles.ground : styles.trace);
       return feature;
     });
     for (const mark of marks) {
@@ -90,6 +90,7 @@ function stylesIn(colours: PlanColours) {
   return {
     symbols,
     trace: new Style({ stroke: new Stroke({ color: faint(colours.chalk), width: 2 }), zIndex: 1 }),
+    ground: new Style({ stroke: new Stroke({ color: faint(colours.muted), width: 2 }), zIndex: 0 }),
     ellipse: new Style({ stroke: new Stroke({ color: colours.chalk, width: 1 }), zIndex: 2 }),
   };
 }

@@ -20,6 +20,8 @@ describe('what the plan shows', () => {
       mark('b', { trace: 'T2', at: [9, 9] }),
       mark('c', { trace: 'T1', order: 1, at: [1, 0] }),
       mark('d'),
+      mark('between', { trace: 'T1', at: [5, 5] }),
+      mark('edge', { trace: 'E', kind: 'road edge' }),
       mark('e', { trace: 'T2', at: [8, 8] }),
     ]);
     expect(traces).toEqual([
@@ -30,6 +32,7 @@ describe('what the plan shows', () => {
           [1, 0],
           [2, 0],
         ],
+        ground: false,
       },
       {
         id: 'T2',
@@ -38,7 +41,9 @@ describe('what the plan shows', () => {
           [9, 9],
           [8, 8],
         ],
+        ground: false,
       },
+      { id: 'E', label: 'E', path: [[0, 0]], ground: true },
     ]);
   });
 

@@ -20,6 +20,8 @@ export interface PlanTrace {
   readonly id: string;
   readonly label: string;
   readonly path: readonly PlanPoint[];
+  /** A line of the ground (road edge, line marking), not of the incident. */
+  readonly ground?: boolean;
 }
 
 /** A body where it stands: its outline is given in scene coordinates, not in the body frame. */
@@ -94,19 +96,28 @@ export interface PlanMove {
  * Content that is empty may be left out. `fit()` shows everything.
  */
 
-/** The traces that the marks form, each in its order; marks without an order stand in list order. */
+/**
+ * The traces that the marks form, each in its order. Where some marks of a trace have a place in it,
+ * the others lie somewhere on the line and do not draw it; where none has, list order is taken.
+ */
 export function tracesOf(marks: readonly PlanMark[]): PlanTrace[] {
-  const traces = new Map<string, { at: PlanPoint; order: number }[]>();
-  marks.forEach((mark, index) => {
-    if (mark.trace === null) return;
-    const place = { at: mark.at, order: mark.order ?? index };
-    const places = traces.get(mark.trace);
-    if (places) places.push(place);
-    else traces.set(mark.trace, [place]);
+  const traces = new Map<string, PlanMark[]>();
+  for (const mark of marks) {
+    if (mark.trace === null) continue;
+    const members = traces.get(mark.trace);
+    if (members) members.push(mark);
+    else traces.set(mark.trace, [mark]);
+  }
+  return [...traces].map(([name, members]) => {
+    const placed = members.filter((mark) => mark.order !== null);
+    const path = placed.length > 0 ? placed.sort(byOrder) : members;
+    return {
+      id: name,
+      label: name,
+      path: path.map((mark) => mark.at),
+      ground: members.every(({ kind }) => kind === 'road edge' || kind === 'line marking'),
+    };
   });
-  return [...traces].map(([name, places]) => ({
-    id: name,
-    label: name,
-    path: places.sort((a, b) => a.order - b.order).map((place) => place.at),
-  }));
 }
+
+const byOrder = (a: PlanMark, b: PlanMark): number => (a.order ?? 0) - (b.order ?? 0);

@@ -109,9 +109,11 @@ export class PlanMap {
     if ((this.map.getSize()?.[0] ?? 0) > 0) this.settledExtent = null;
   }
 
-  zoom(factor: number): void {
+  /** Zooms about a point, or about the middle. */
+  zoom(factor: number, about: PlanPoint | null): void {
     this.view.animate({
       resolution: this.resolution / factor,
+      anchor: about === null ? undefined : [about[0], about[1]],
       duration: animation,
       easing: easeOut,
     });

@@ -188,7 +188,8 @@ export class ScalePlan {
   }
 
   protected zoom(factor: number): void {
-    this.map()?.zoom(factor);
+    // What is looked at stays in sight.
+    this.map()?.zoom(factor, this.byId().get(this.selected() ?? '')?.at ?? null);
   }
 
   protected useKey(event: KeyboardEvent): void {

@@ -28,10 +28,10 @@ import {
 } from '#shared/contracts/survey';
 import { codesIn, type MappingGuess, type SurveyColumn } from '#shared/survey/guess-mapping';
 import { fromSi } from '#shared/units/units';
-import { fieldError } from '../../../core/forms/server-errors';
 import { quantity, readQuantity } from '../../../ui/quantity-field/quantity';
 import { QuantityField } from '../../../ui/quantity-field/quantity-field';
 import { otherSigmaRule } from '../mark-texts';
+import { counted } from '../show-mark';
 
 /** Columns that a file must have, and those that it may have. */
 const needed = [
@@ -71,7 +71,7 @@ export class MappingForm {
   protected readonly units = lengthUnits;
   protected readonly kinds = markKinds;
   protected readonly sigmaRule = otherSigmaRule;
-  protected readonly fieldError = fieldError;
+  protected readonly counted = counted;
   protected readonly form = this.build.group({
     delimiter: this.build.control<SurveyMapping['delimiter']>(','),
     decimal: this.build.control<SurveyMapping['decimal'] | ''>('', Validators.required),
