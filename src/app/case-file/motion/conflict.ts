@@ -44,7 +44,9 @@ export function settle(
 ): DraftContent {
   const document = { ...theirs.document };
   for (const list of Object.keys(lists) as ListName[]) {
-    const kept = keep.filter((key) => key.startsWith(`${list}.`)).map((k) => k.slice(list.length + 1));
+    const kept = keep
+      .filter((key) => key.startsWith(`${list}.`))
+      .map((k) => k.slice(list.length + 1));
     const items = idsOf(mine.document, theirs.document, list).flatMap((id) => {
       const item = itemOf(kept.includes(id) ? mine.document : theirs.document, list, id);
       return item === undefined ? [] : [item];

@@ -65,25 +65,25 @@ const reach = 0.4;
   `,
   styles: `
     :host {
-      position: relative;
-      display: block;
-      height: 100%;
+      display: flex;
+      flex-direction: column;
+      min-height: 0;
     }
     ui-scale-plan {
-      display: block;
-      width: 100%;
-      height: 100%;
+      flex: 1;
+      min-height: 0;
     }
     p {
+      flex: 1;
+      margin: 0;
       padding: 12px;
     }
     .shows {
-      position: absolute;
-      bottom: 0;
-      left: 50%;
       display: flex;
-      transform: translateX(-50%);
-      white-space: nowrap;
+      flex-wrap: wrap;
+      justify-content: flex-end;
+      padding: 0 8px;
+      border-top: 1px solid var(--line);
     }
   `,
   changeDetection: ChangeDetectionStrategy.OnPush,
@@ -102,21 +102,21 @@ export class PlanTable {
 
   protected readonly showsAll = signal(false);
 
-  /** The marks that this reconstruction speaks of, with their traces; or all, also while none is chosen. */
+  /** The marks that this reconstruction speaks of; or all, also while it speaks of none. */
   protected readonly marks = computed(() => {
     const all = this.live.marks();
     const used = new Set(
       this.workbench.stations().flatMap((station) => station.marks.map((one) => one.markId)),
     );
     if (this.showsAll() || this.place.panel() === 'marks' || used.size === 0) return all;
-    const traces = new Set(all.flatMap((mark) => (used.has(mark.id) ? [mark.trace] : [])));
     const chosen = this.place.mark();
-    return all.filter(
-      (mark) =>
-        used.has(mark.id) || mark.id === chosen || (mark.trace !== null && traces.has(mark.trace)),
-    );
+    return all.filter((mark) => used.has(mark.id) || mark.id === chosen);
   });
-  protected readonly traces = computed(() => tracesOf(this.marks()));
+  /** The traces that the marks shown are on, each whole. */
+  protected readonly traces = computed(() => {
+    const shown = new Set(this.marks().map((mark) => mark.trace));
+    return tracesOf(this.live.marks()).filter((trace) => shown.has(trace.id));
+  });
   protected readonly assigned = computed(
     () => this.workbench.station()?.marks.map((one) => one.markId) ?? [],
   );
@@ -136,16 +136,16 @@ export class PlanTable {
       : { document, station, data, poses: this.live.poses() };
   });
   /** Where several motions agree with the knowns, the plan shows the first; the sheet shows all. */
-  private readonly branch = computed(() => this.scene()?.data.answer.solution?.branches.at(0) ?? null);
+  private readonly branch = computed(
+    () => this.scene()?.data.answer.solution?.branches.at(0) ?? null,
+  );
 
   protected readonly bodies = computed(() => {
     const scene = this.scene();
     if (scene === null) return [];
     const { document, station, data, poses } = scene;
     const ghosts = document.stations.flatMap((other) =>
-      other.id === station.id
-        ? []
-        : planBodies(document, other, data.others[other.id] ?? {}, true),
+      other.id === station.id ? [] : planBodies(document, other, data.others[other.id] ?? {}, true),
     );
     return [...ghosts, ...planBodies(document, station, poses, false)];
   });
@@ -168,15 +168,11 @@ export class PlanTable {
   });
   protected readonly guides = computed(() => {
     const scene = this.scene();
-    return scene === null
-      ? []
-      : planGuides(scene.document, scene.station, scene.poses);
+    return scene === null ? [] : planGuides(scene.document, scene.station, scene.poses);
   });
   protected readonly joints = computed(() => {
     const scene = this.scene();
-    return scene === null
-      ? []
-      : planJoints(scene.document, scene.station, scene.poses);
+    return scene === null ? [] : planJoints(scene.document, scene.station, scene.poses);
   });
 
   protected move({ markId, at }: PlanMove): void {

@@ -30,7 +30,9 @@ export class VectorPolygon {
 
   protected readonly height = computed(() => this.fit().height);
   protected readonly pole = computed(() => this.fit().toPage([0, 0]));
-  protected readonly drawn = computed(() => this.arrows().map((one) => draw(one, this.fit().toPage)));
+  protected readonly drawn = computed(() =>
+    this.arrows().map((one) => draw(one, this.fit().toPage)),
+  );
   protected readonly bar = computed(() => {
     const length = roundLength(70 / this.fit().scale);
     return { pixels: length * this.fit().scale, text: `${showPlain(length)} ${this.unit()}` };

@@ -25,7 +25,14 @@ import { WordsField } from './words-field';
 /** One known of a station: what it speaks of, how much of it is known, how well, and on what basis. */
 @Component({
   selector: 'app-known-form',
-  imports: [MatCheckbox, MatFormFieldModule, MatSelectModule, PointSelect, UncertainField, WordsField],
+  imports: [
+    MatCheckbox,
+    MatFormFieldModule,
+    MatSelectModule,
+    PointSelect,
+    UncertainField,
+    WordsField,
+  ],
   templateUrl: './known-form.html',
   styleUrl: './panel.scss',
   changeDetection: ChangeDetectionStrategy.OnPush,

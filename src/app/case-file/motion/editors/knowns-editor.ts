@@ -71,8 +71,7 @@ export class KnownsEditor {
   });
 
   protected speaksOf(known: ReconstructionKnown): string {
-    const of =
-      'at' in known ? this.names().point(known.at) : this.names().body(bodyOfKnown(known));
+    const of = 'at' in known ? this.names().point(known.at) : this.names().body(bodyOfKnown(known));
     return `${quantities[quantityOf(known)].split(' ')[0]}, ${of}`;
   }
 

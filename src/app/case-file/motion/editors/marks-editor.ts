@@ -18,7 +18,14 @@ import { QuantityField } from './quantity-field';
 /** Which point of which body made which mark at the station, and what the mark tells. */
 @Component({
   selector: 'app-marks-editor',
-  imports: [MatButton, MatCheckbox, MatFormFieldModule, MatSelectModule, PointSelect, QuantityField],
+  imports: [
+    MatButton,
+    MatCheckbox,
+    MatFormFieldModule,
+    MatSelectModule,
+    PointSelect,
+    QuantityField,
+  ],
   templateUrl: './marks-editor.html',
   styleUrl: './panel.scss',
   changeDetection: ChangeDetectionStrategy.OnPush,
@@ -36,8 +43,7 @@ export class MarksEditor {
     () => this.marks().find((mark) => mark.id === this.place.mark()) ?? null,
   );
   protected readonly assignment = computed(
-    () =>
-      this.workbench.station()?.marks.find((one) => one.markId === this.place.mark()) ?? null,
+    () => this.workbench.station()?.marks.find((one) => one.markId === this.place.mark()) ?? null,
   );
   protected readonly assigned = computed(() => {
     const names = namesIn(this.draft.document());

@@ -130,9 +130,7 @@ export class QuantityField {
     this.unread.note(this, false);
   }
 
-  private read(
-    text: string,
-  ): { ok: true; value: number | null } | { ok: false; message: string } {
+  private read(text: string): { ok: true; value: number | null } | { ok: false; message: string } {
     if (text.trim() === '' && this.optional()) return { ok: true, value: null };
     const parsed = parseQuantity(text, this.dimension(), { unit: this.unit() });
     if (!parsed.ok) return parsed;

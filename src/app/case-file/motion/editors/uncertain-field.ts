@@ -33,7 +33,9 @@ export interface Uncertain {
         (valueChange)="put({ sigma: $event ?? 0 })"
       />
     }
-    <mat-checkbox [checked]="exact()" (change)="state($event.checked)">Stated as exact</mat-checkbox>
+    <mat-checkbox [checked]="exact()" (change)="state($event.checked)"
+      >Stated as exact</mat-checkbox
+    >
   `,
   styles: `
     :host {

@@ -1,4 +1,11 @@
-import { ChangeDetectionStrategy, Component, computed, effect, inject, signal } from '@angular/core';
+import {
+  ChangeDetectionStrategy,
+  Component,
+  computed,
+  effect,
+  inject,
+  signal,
+} from '@angular/core';
 import { MatButton } from '@angular/material/button';
 import { readComputation } from '#shared/contracts/motion';
 import { computation } from '#shared/engine/documents/computation';
@@ -44,9 +51,7 @@ export class RecordedSheet {
   protected readonly recordedAt = computed(() => showMoment(this.item()?.recordedAt ?? ''));
   protected readonly link = computed(() => {
     const hash = this.place.computation();
-    return hash === null
-      ? ''
-      : address(readComputation, { caseId: this.current.id(), hash });
+    return hash === null ? '' : address(readComputation, { caseId: this.current.id(), hash });
   });
   /** Input and result of the recorded document; null while it loads or when it is of another kind. */
   protected readonly recorded = computed(() => {

@@ -57,7 +57,13 @@ export class Records {
     return made;
   }
 
+  /** Opens a record, with its station on the plan and, unless work would be lost, its alternative. */
   open(hash: string | null): void {
-    this.place.go({ computation: hash });
+    const item = this.items().find((one) => one.hash === hash);
+    this.place.go({
+      computation: hash,
+      ...(item && { station: item.stationId }),
+      ...(item && !this.draft.changed() && { alternative: item.reconstructionId }),
+    });
   }
 }

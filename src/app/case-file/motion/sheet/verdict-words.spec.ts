@@ -95,10 +95,7 @@ describe('the verdict in words', () => {
     expect(velocity).toEqual({
       level: 'velocity',
       free: ['The trailer may turn about K.'],
-      helps: [
-        'the direction of the velocity of axle of the trailer',
-        'how fast the trailer turns',
-      ],
+      helps: ['the direction of the velocity of axle of the trailer', 'how fast the trailer turns'],
     });
     expect(acceleration.free).toEqual(['The trailer may turn.']);
     expect(acceleration.helps).toEqual(['how the turning of the trailer changes']);

@@ -30,10 +30,7 @@ const titles: Readonly<Record<MotionStatus, string>> = {
 /** What the solution says of itself, in plain words. */
 export function verdictOf(solution: MotionSolution): Verdict {
   const { velocity, acceleration } = solution.levels;
-  const names =
-    solution.status === 'contradictory'
-      ? solution.clash
-      : solution.suspects;
+  const names = solution.status === 'contradictory' ? solution.clash : solution.suspects;
   return {
     standing: standingOf(solution),
     title: titles[solution.status],

@@ -19,8 +19,9 @@ import { lacksOf, verdictOf } from './verdict-words';
         <p>
           <strong>{{ v.title }}</strong> {{ v.says.join(' ') }}
           @for (name of v.names; track name) {
-            <button type="button" (click)="traced.emit(name)">{{ nameOf()(name) }}</button
-            >{{ $last ? '.' : ', ' }}
+            <button type="button" (click)="traced.emit(name)">{{ nameOf()(name) }}</button>{{
+              $last ? '.' : ', '
+            }}
           }
         </p>
         @if (velocityLack(); as lack) {
