@@ -17,14 +17,20 @@ export const unknownScales = (model: Model): Float64Array => {
 };
 
 /** Norm of each row in scaled unknowns; 1 for an empty row. */
-export const rowNorms = (rows: Rows, scales: Float64Array, ground: number): Float64Array => {
-  const norms = new Float64Array(rows.count);
+export const rowNorms = (
+  rows: Rows,
+  scales: Float64Array,
+  ground: number,
+  norms: Float64Array = new Float64Array(rows.count),
+): Float64Array => {
+  const c = rows.coefficients;
   for (let k = 0; k < rows.count; k++) {
+    const a = rows.first[k];
+    const b = rows.second[k];
     let sum = 0;
-    for (let i = 0; i < 6; i++) {
-      const body = i < 3 ? rows.first[k] : rows.second[k];
-      if (body === ground) continue;
-      sum += (rows.coefficients[6 * k + i] / scales[3 * body + (i % 3)]) ** 2;
+    for (let i = 0; i < 3; i++) {
+      if (a !== ground) sum += (c[6 * k + i] / scales[3 * a + i]) ** 2;
+      if (b !== ground) sum += (c[6 * k + 3 + i] / scales[3 * b + i]) ** 2;
     }
     norms[k] = sum > 0 ? Math.sqrt(sum) : 1;
   }

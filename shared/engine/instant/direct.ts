@@ -1,5 +1,5 @@
 import { bandedZeros, factorBanded, solveBanded } from '../linear/banded';
-import type { BandedFactors } from '../linear/banded';
+import type { Banded, BandedFactors } from '../linear/banded';
 import { inverseNorm1 } from '../linear/condition';
 import { bandOrder } from '../linear/ordering';
 import { rowNorms } from './assemble';
@@ -8,17 +8,44 @@ import type { Rows } from './rows';
 
 /**
  * As many equations as unknowns: one banded LU serves velocities, accelerations and the
- * derivatives by every noise. Bodies stand in reverse Cuthill–McKee order of the joints, so that
- * the work grows with the number of bodies in a chain.
+ * derivatives by every noise. Bodies stand in reverse Cuthill–McKee order of the joints, and
+ * equations by the bodies that they tie together, so that the work grows with the number of bodies
+ * in a chain.
  */
-export interface Direct {
-  readonly factors: BandedFactors;
-  /** Row of the band for each equation, and its norm. */
+export interface BandPlan {
+  readonly size: number;
+  readonly ground: number;
+  readonly lower: number;
+  readonly upper: number;
+  /** Row of the band for each equation. */
   readonly rowPlace: Int32Array;
-  readonly norms: Float64Array;
   /** Column of the band for each unknown. */
   readonly columnPlace: Int32Array;
-  readonly condition: number;
+  readonly scales: Float64Array;
+}
+
+/** Room for the numbers of a factorisation, which may be used again for the next one. */
+export interface BandSpace {
+  readonly band: Banded;
+  readonly pivots: Int32Array;
+  readonly norms: Float64Array;
+  readonly sums: Float64Array;
+}
+
+export const spaceFor = ({ size, lower, upper }: BandPlan): BandSpace => ({
+  band: bandedZeros(size, lower, upper),
+  pivots: new Int32Array(size),
+  norms: new Float64Array(size),
+  sums: new Float64Array(size),
+});
+
+export interface Direct {
+  readonly plan: BandPlan;
+  readonly factors: BandedFactors;
+  /** What each equation was divided by. */
+  readonly norms: Float64Array;
+  /** Largest sum of a column's absolute values. */
+  readonly norm1: number;
 }
 
 const neighboursOf = (model: Model): number[][] => {
@@ -31,25 +58,14 @@ const neighboursOf = (model: Model): number[][] => {
   return lists;
 };
 
-/** Places in the band, by bodies and then by the bodies that each equation ties together. */
-export const bandOf = (model: Model): Int32Array => {
-  const place = new Int32Array(model.ground + 1).fill(-1);
-  bandOrder(neighboursOf(model)).forEach((body, k) => {
-    place[body] = k;
-  });
-  return place;
-};
-
-/** Null when the equations are not independent (a pivot below `tolerance` of the largest). */
-export const factorDirect = (
-  model: Model,
-  rows: Rows,
-  scales: Float64Array,
-  bodyPlace: Int32Array,
-  tolerance: number,
-): Direct | null => {
+/** Where equations and unknowns stand; depends on which bodies the rows tie, not on their numbers. */
+export const planBand = (model: Model, rows: Rows, scales: Float64Array): BandPlan => {
   const { ground } = model;
   const size = rows.count;
+  const bodyPlace = new Int32Array(ground + 1).fill(-1);
+  bandOrder(neighboursOf(model)).forEach((body, k) => {
+    bodyPlace[body] = k;
+  });
   const low = new Int32Array(size);
   const high = new Int32Array(size);
   for (let k = 0; k < size; k++) {
@@ -69,42 +85,65 @@ export const factorDirect = (
     lower = Math.max(lower, r - 3 * low[k]);
     upper = Math.max(upper, 3 * high[k] + 2 - r);
   });
-  lower = Math.min(lower, size - 1);
-  upper = Math.min(upper, size - 1);
-  const norms = rowNorms(rows, scales, ground);
-  const columnPlace = new Int32Array(size);
+  const columnPlace = new Int32Array(3 * ground);
   for (let b = 0; b < ground; b++)
     for (let c = 0; c < 3; c++) columnPlace[3 * b + c] = 3 * bodyPlace[b] + c;
-  const band = bandedZeros(size, lower, upper);
-  const columnSums = new Float64Array(size);
+  const most = size - 1;
+  return {
+    size,
+    ground,
+    lower: Math.min(lower, most),
+    upper: Math.min(upper, most),
+    rowPlace,
+    columnPlace,
+    scales,
+  };
+};
+
+export const factorDirect = (
+  plan: BandPlan,
+  rows: Rows,
+  space: BandSpace = spaceFor(plan),
+): Direct => {
+  const { size, ground, lower, rowPlace, columnPlace, scales } = plan;
+  const { band, norms, sums } = space;
+  const { values, width } = band;
+  values.fill(0);
+  sums.fill(0);
+  rowNorms(rows, scales, ground, norms);
   for (let k = 0; k < size; k++) {
-    const r = rowPlace[k];
+    const from = rowPlace[k] * (width - 1) + lower;
     for (let i = 0; i < 6; i++) {
       const value = rows.coefficients[6 * k + i];
       const body = i < 3 ? rows.first[k] : rows.second[k];
       if (value === 0 || body === ground) continue;
-      const unknown = 3 * body + (i % 3);
-      const c = columnPlace[unknown];
+      const unknown = 3 * body + (i < 3 ? i : i - 3);
       const scaled = value / (scales[unknown] * norms[k]);
-      band.values[r * band.width + c - r + lower] += scaled;
-      columnSums[c] += Math.abs(scaled);
+      values[from + columnPlace[unknown]] += scaled;
+      sums[columnPlace[unknown]] += Math.abs(scaled);
     }
   }
-  const factors = factorBanded(band);
-  if (!(factors.pivotRatio > tolerance)) return null;
-  const condition = Math.max(...columnSums) * inverseNorm1(factors);
-  return condition * tolerance < 1 ? { factors, rowPlace, norms, columnPlace, condition } : null;
+  let norm1 = 0;
+  for (let c = 0; c < size; c++) if (sums[c] > norm1) norm1 = sums[c];
+  return { plan, factors: factorBanded(band, space.pivots), norms, norm1 };
 };
 
-/** Solves for a motion, given one number per equation through `load`. */
+/** Estimate of the condition number in the 1-norm, or null where the equations are dependent. */
+export const conditionOf = (direct: Direct, tolerance: number): number | null => {
+  if (!(direct.factors.pivotRatio > tolerance)) return null;
+  const condition = direct.norm1 * inverseNorm1(direct.factors);
+  return condition * tolerance < 1 ? condition : null;
+};
+
+/** Solves for a motion, given one number per equation. */
 export const solveDirect = (
-  direct: Direct,
-  scales: Float64Array,
-  load: (b: Float64Array) => void,
+  { plan, factors, norms }: Direct,
+  right: Float64Array,
   motion: Float64Array,
+  work: Float64Array = new Float64Array(plan.size),
 ): void => {
-  const b = new Float64Array(direct.rowPlace.length);
-  load(b);
-  solveBanded(direct.factors, b);
-  for (let i = 0; i < b.length; i++) motion[i] = b[direct.columnPlace[i]] / scales[i];
+  const { size, rowPlace, columnPlace, scales } = plan;
+  for (let k = 0; k < size; k++) work[rowPlace[k]] = right[k] / norms[k];
+  solveBanded(factors, work);
+  for (let i = 0; i < size; i++) motion[i] = work[columnPlace[i]] / scales[i];
 };

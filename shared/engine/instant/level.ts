@@ -2,7 +2,7 @@ import { unknownScales } from './assemble';
 import type { Column } from './derivative';
 import { noiseColumns, readersOf, velocityDerivatives } from './derivative';
 import type { Direct } from './direct';
-import { bandOf, factorDirect, solveDirect } from './direct';
+import { conditionOf, factorDirect, planBand, solveDirect } from './direct';
 import type { Equations } from './equations';
 import { writeEquations } from './equations';
 import { pointMotion } from './knowns';
@@ -182,16 +182,10 @@ const solveSquare = (task: Task, s: State): LevelResult | null => {
   const rows = writeEquations(equations, model.ground, s);
   if (equations.owners.some((o) => o.known !== null && isDirectionOnly(o.known)))
     if (rows.right.every((v) => v === 0)) return null;
-  const direct = factorDirect(model, rows, scales, bandOf(model), tolerance);
-  if (direct === null) return null;
-  solveDirect(
-    direct,
-    scales,
-    (b) => {
-      for (let k = 0; k < rows.count; k++) b[direct.rowPlace[k]] = rows.right[k] / direct.norms[k];
-    },
-    motion,
-  );
+  const direct = factorDirect(planBand(model, rows, scales), rows);
+  const condition = conditionOf(direct, tolerance);
+  if (condition === null) return null;
+  solveDirect(direct, rows.right, motion);
   return {
     motion: Float64Array.from(motion),
     errors: squareErrors(task, s, direct),
@@ -201,22 +195,21 @@ const solveSquare = (task: Task, s: State): LevelResult | null => {
     rank: rows.count,
     redundancy: 0,
     chiSquared: 0,
-    condition: direct.condition,
+    condition,
   };
 };
 
-const squareErrors = (task: Task, s: State, direct: Direct): Float64Array[] =>
-  task.columns(s).map((column) => {
+const squareErrors = (task: Task, s: State, direct: Direct): Float64Array[] => {
+  const right = new Float64Array(direct.plan.size);
+  const work = new Float64Array(direct.plan.size);
+  return task.columns(s).map((column) => {
     const error = new Float64Array(3 * (task.model.ground + 1));
-    if (column.rows.length > 0)
-      solveDirect(
-        direct,
-        task.scales,
-        (b) =>
-          column.rows.forEach((row, k) => {
-            b[direct.rowPlace[row]] = -column.values[k] / direct.norms[row];
-          }),
-        error,
-      );
+    if (column.rows.length === 0) return error;
+    right.fill(0);
+    column.rows.forEach((row, k) => {
+      right[row] = -column.values[k];
+    });
+    solveDirect(direct, right, error, work);
     return error;
   });
+};

@@ -26,9 +26,11 @@ export const bandedZeros = (size: number, lower: number, upper: number): Banded 
 };
 
 /** Factors the matrix in its own storage; the given object must not be read as a matrix again. */
-export const factorBanded = (matrix: Banded): BandedFactors => {
+export const factorBanded = (
+  matrix: Banded,
+  pivots: Int32Array = new Int32Array(matrix.size),
+): BandedFactors => {
   const { size, lower, upper, width, values } = matrix;
-  const pivots = new Int32Array(size);
   let smallest = Infinity;
   let largest = 0;
   for (let k = 0; k < size; k++) {
@@ -65,7 +67,8 @@ export const factorBanded = (matrix: Banded): BandedFactors => {
       for (let j = 1; j <= lastColumn - k; j++) values[row + j] -= factor * values[start + j];
     }
   }
-  return { ...matrix, pivots, pivotRatio: largest === 0 ? 0 : smallest / largest };
+  const pivotRatio = largest === 0 ? 0 : smallest / largest;
+  return { size, lower, upper, width, values, pivots, pivotRatio };
 };
 
 /** Solves A x = b in place of b, from `offset` on. */
