@@ -163,7 +163,7 @@ async function writeFirstEvents(
     condition: entry.condition,
     sealAfter: entry.sealNumber,
     note: [
-      `${entry.kind}: ${entry.description}`,
+      `${entry.kind}: ${entry.description.replace(/\.$/, '')}`,
       entry.packaging === '' ? '' : `packaging: ${entry.packaging}`,
       entry.parentNumber === null ? '' : `taken from ${entry.parentNumber}`,
     ]

@@ -16,7 +16,7 @@ import { HandOverDialog } from './hand-over-dialog';
 
 const exhibit = testExhibit({ custody: testOffer() });
 
-async function open(dialog: Type<unknown>, data: object) {
+function open(dialog: Type<unknown>, data: object) {
   const closed: unknown[] = [];
   TestBed.configureTestingModule({
     providers: [
@@ -49,7 +49,7 @@ describe('the answer to a hand-over', () => {
   const url = `/api/cases/${caseId}/exhibits/${exhibit.id}/answer`;
 
   it('when it is signed, then the very offer is accepted with one key', async () => {
-    const { loader, http } = await open(AnswerDialog, data);
+    const { loader, http } = open(AnswerDialog, data);
     await type(loader, 'Where you put it', 'bench 3');
     await type(loader, 'Your password', 'drawing table 26');
     await press(loader, 'Accept and sign');
@@ -65,7 +65,7 @@ describe('the answer to a hand-over', () => {
   });
 
   it('when the password is not right, then the message stands beside it', async () => {
-    const { loader, http, closed, stable } = await open(AnswerDialog, data);
+    const { loader, http, closed, stable } = open(AnswerDialog, data);
     await type(loader, 'Your password', 'guessed');
     await press(loader, 'Accept and sign');
     http.expectOne(url).flush(
@@ -85,7 +85,7 @@ describe('the answer to a hand-over', () => {
   });
 
   it('when there is no password, then nothing is sent', async () => {
-    const { loader, http } = await open(AnswerDialog, data);
+    const { loader, http } = open(AnswerDialog, data);
     await press(loader, 'Accept and sign');
     http.expectNone(url);
     expect(await (await field(loader, 'Your password')).hasErrors()).toBe(true);
@@ -97,7 +97,7 @@ describe('the offer of an item', () => {
   const url = `/api/cases/${caseId}/exhibits/${item.id}/hand-over`;
 
   it('when it goes by courier, then its tracking number is asked for and sent', async () => {
-    const { loader, http, stable } = await open(HandOverDialog, { caseId, exhibit: item });
+    const { loader, http, stable } = open(HandOverDialog, { caseId, exhibit: item });
     http
       .expectOne(`/api/cases/${caseId}/custody/receivers`)
       .flush({ items: [{ id: otherId, name: 'A. Colleague' }] });
@@ -123,7 +123,7 @@ describe('the offer of an item', () => {
   });
 
   it('when receiver or purpose are missing, then nothing is sent', async () => {
-    const { loader, http, stable } = await open(HandOverDialog, { caseId, exhibit: item });
+    const { loader, http, stable } = open(HandOverDialog, { caseId, exhibit: item });
     http.expectOne(`/api/cases/${caseId}/custody/receivers`).flush({ items: [] });
     await stable();
     await press(loader, 'Offer it');

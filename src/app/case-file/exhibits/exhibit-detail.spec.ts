@@ -1,6 +1,6 @@
 import { provideHttpClient } from '@angular/common/http';
 import { provideHttpClientTesting } from '@angular/common/http/testing';
-import { HarnessLoader } from '@angular/cdk/testing';
+import { type HarnessLoader } from '@angular/cdk/testing';
 import { TestbedHarnessEnvironment } from '@angular/cdk/testing/testbed';
 import { signal } from '@angular/core';
 import { type ComponentFixture, TestBed } from '@angular/core/testing';
@@ -67,7 +67,7 @@ describe('one exhibit', () => {
     expect(await buttons(shown)).toEqual(
       expect.arrayContaining(['Hand over …', 'Record what was done …', 'Whole custody']),
     );
-    expect(shown.text()).toMatch(/Held by Ines Farrow\s+at: cage 2/);
+    expect(shown.text()).toContain('Held by Ines Farrow, cage 2; sealed with S-7.');
     const button = await shown.loader.getHarness(MatButtonHarness.with({ text: 'Hand over …' }));
     await button.click();
     expect(shown.asked).toEqual([{ caseId, exhibit: testExhibit() }]);

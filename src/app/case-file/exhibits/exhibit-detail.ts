@@ -41,9 +41,10 @@ export class ExhibitDetail {
     const pending = this.pending();
     return pending !== null && isOverdue(pending.offeredAt, Date.now());
   });
-  protected readonly place = computed(() => {
-    const { location } = this.exhibit().custody;
-    return location === '' ? 'at no recorded place' : `at: ${location}`;
+  protected readonly whereabouts = computed(() => {
+    const { location, sealNumber } = this.exhibit().custody;
+    const place = location === '' ? '' : `, ${location}`;
+    return sealNumber === '' ? `${place}; not sealed.` : `${place}; sealed with ${sealNumber}.`;
   });
   protected readonly facts = computed(() => {
     const exhibit = this.exhibit();
