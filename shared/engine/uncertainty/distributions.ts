@@ -1,9 +1,7 @@
 import chiSquareCdf from '@stdlib/stats-base-dists-chisquare-cdf';
-import chiSquareQuantile from '@stdlib/stats-base-dists-chisquare-quantile';
 import standardNormalCdf from '@stdlib/stats-base-dists-normal-cdf';
 import standardNormalQuantile from '@stdlib/stats-base-dists-normal-quantile';
 import studentCdf from '@stdlib/stats-base-dists-t-cdf';
-import studentQuantile from '@stdlib/stats-base-dists-t-quantile';
 
 /** P(Z ≤ z) of the standard normal distribution. */
 export const normalCdf = (z: number): number => standardNormalCdf(z, 0, 1);
@@ -14,13 +12,50 @@ export const normalQuantile = (p: number): number => standardNormalQuantile(p, 0
 export const tCdf = (t: number, dof: number): number =>
   Number.isFinite(dof) ? studentCdf(t, dof) : normalCdf(t);
 /** t with P(T ≤ t) = p. */
-export const tQuantile = (p: number, dof: number): number =>
-  Number.isFinite(dof) ? studentQuantile(p, dof) : normalQuantile(p);
+export function tQuantile(p: number, dof: number): number {
+  if (!Number.isFinite(dof)) return normalQuantile(p);
+  if (p === 0.5) return 0;
+  return p < 0.5 ? -tQuantile(1 - p, dof) : invert((t) => studentCdf(t, dof), p, 1);
+}
 
 /** P(X ≤ x) of χ² with `dof` degrees of freedom. */
 export const chiSquaredCdf = (x: number, dof: number): number => chiSquareCdf(x, dof);
-/** x with P(X ≤ x) = p. */
-export const chiSquaredQuantile = (p: number, dof: number): number => chiSquareQuantile(p, dof);
+/** x with P(X ≤ x) = p, 0 < p < 1. */
+export function chiSquaredQuantile(p: number, dof: number): number {
+  if (dof === 1) return normalQuantile((1 + p) / 2) ** 2;
+  if (dof === 2) return -2 * Math.log1p(-p);
+  return invert((x) => chiSquareCdf(x, dof), p, dof);
+}
+
+/**
+ * The x ≥ 0 at which a distribution function reaches p, by the Illinois form of false position. (The
+ * library's own inverses bring a logger along that no single-file program can hold.)
+ * Source: M. Dowell and P. Jarratt, BIT 11 (1971) 168, from memory.
+ */
+function invert(cdf: (x: number) => number, p: number, typical: number): number {
+  let low = 0;
+  let below = cdf(0) - p;
+  let high = typical;
+  while (cdf(high) < p) high *= 2;
+  let above = cdf(high) - p;
+  let side = 0;
+  for (let i = 0; i < 200 && high - low > 2 * Number.EPSILON * high; i++) {
+    const x = high - (above * (high - low)) / (above - below);
+    const off = cdf(x) - p;
+    if (off === 0) return x;
+    if (off > 0) {
+      [high, above] = [x, off];
+      if (side === 1) below /= 2;
+      side = 1;
+    } else {
+      [low, below] = [x, off];
+      if (side === -1) above /= 2;
+      side = -1;
+    }
+  }
+  return (low + high) / 2;
+}
+
 /** P(X > x): the p-value of a fit; null where nothing is redundant. */
 export const chiSquaredPValue = (x: number, dof: number): number | null =>
   dof > 0 ? Math.max(0, 1 - chiSquareCdf(x, dof)) : null;
