@@ -46,9 +46,13 @@ const inputsOf = (owner: Owner): number[] => {
   }
 };
 
-/** Which owners read each element of `g`. */
-export const readersOf = (equations: Equations): ReadonlyMap<number, readonly Owner[]> => {
+/** Which owners read each element of `g`; nothing is listed where nothing is uncertain. */
+export const readersOf = (
+  equations: Equations,
+  noises: number,
+): ReadonlyMap<number, readonly Owner[]> => {
   const readers = new Map<number, Owner[]>();
+  if (noises === 0) return readers;
   for (const owner of equations.owners)
     for (const at of new Set(inputsOf(owner))) {
       const list = readers.get(at);

@@ -34,7 +34,7 @@ export const solveInstant = (problem: MotionProblem): MotionSolution => {
   const { model, tolerance, velocity, acceleration } = answer;
   const first = judge(model, velocity.equations, velocity.outcome, tolerance);
   const second =
-    acceleration === null
+    acceleration === null || acceleration.outcome.refused === 'too large'
       ? null
       : judge(model, acceleration.equations, acceleration.outcome, tolerance);
   const branches = answer.branches.map((b) => reportBranch(answer, b));
@@ -86,7 +86,8 @@ const describe = (answer: Answer, level: Level, judged: Judged | null) => {
 
 const clashOf = ({ model, tolerance, velocity, acceleration }: Answer): string[] => {
   if (velocity.outcome.refused !== null) return smallestClash(model, tolerance, 'velocity');
-  if (acceleration !== null && acceleration.outcome.refused !== null)
+  const refused = acceleration?.outcome.refused ?? null;
+  if (refused !== null && refused !== 'too large')
     return smallestClash(model, tolerance, 'acceleration');
   return [];
 };
@@ -96,6 +97,7 @@ const refusals: Record<Refusal, string> = {
   'no such magnitude': 'No motion that agrees with the other knowns reaches a known magnitude.',
   'only rest': 'The known directions do not meet in one pole: only rest agrees with all of them.',
   sense: 'The motion runs against the sense of a known direction.',
+  'too large': 'With so many bodies they are sought only where the knowns just fix them.',
 };
 
 const warningsOf = (answer: Answer, first: Judged, second: Judged | null): string[] => {

@@ -17,11 +17,18 @@ export type LevelOutcome =
   | { readonly found: readonly []; readonly refused: Refusal };
 
 /** Why no motion satisfies the equations. */
-export type Refusal = 'exact equations contradict' | 'no such magnitude' | 'only rest' | 'sense';
+export type Refusal =
+  'exact equations contradict' | 'no such magnitude' | 'only rest' | 'sense' | 'too large';
+
+/**
+ * Bodies up to which equations that are more or fewer than the unknowns are judged; the work grows
+ * with the cube. Just determined problems may be of any size.
+ */
+const mostJudged = 100;
 
 /** The velocities' equations. */
 export const velocityTask = (model: Model, equations: Equations, tolerance: number): Task => {
-  const readers = readersOf(equations);
+  const readers = readersOf(equations, model.noises.length);
   return {
     model,
     equations,
@@ -43,7 +50,7 @@ export const accelerationTask = (
   tolerance: number,
   velocity: LevelResult,
 ): Task => {
-  const readers = readersOf(equations);
+  const readers = readersOf(equations, model.noises.length);
   const own = new Set<number>();
   model.knowns.forEach((k) => {
     if (k.level === 'acceleration' && k.kind !== 'curvature') k.parts.forEach((p) => own.add(p.at));
@@ -115,6 +122,7 @@ export const solveLevel = (task: Task, s: State): LevelOutcome => {
   const direct = solveSquare(task, s);
   if (direct !== null && senseViolation(task, s, direct) === null)
     return { found: [direct], refused: null };
+  if (task.model.ground > mostJudged) return { found: [], refused: 'too large' };
   const base = Float64Array.from(s.g);
   const starts = findStarts(task, s);
   if (typeof starts === 'string') return { found: [], refused: starts };

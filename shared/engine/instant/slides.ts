@@ -59,7 +59,7 @@ const rates = (
   const equations = slidesOf(model, joints, level);
   const rows = writeEquations(equations, model.ground, state);
   const columns = afterAdjustment(
-    noiseColumns(model, equations, readersOf(equations), state),
+    noiseColumns(model, equations, readersOf(equations, model.noises.length), state),
     velocity,
   );
   const derivatives =

@@ -1,4 +1,5 @@
 import type { MotionProblem } from '../documents/motion-problem';
+import { EngineError } from '../errors';
 import { checkClosure, letPosesFollow } from './closure';
 import { compile } from './compile/index';
 import type { Equations } from './equations';
@@ -47,6 +48,12 @@ export const solveModel = (
   const s = stateOf(model, Float64Array.from(model.g));
   const equations = equationsOf(model, 'velocity', without);
   const outcome = solveLevel(velocityTask(model, equations, tolerance), s);
+  if (outcome.refused === 'too large')
+    throw new EngineError(
+      'unsupported',
+      'bodies',
+      'So many bodies are solved only where equations and unknowns are equal in number and independent.',
+    );
   let acceleration: Answer['acceleration'] = null;
   const branches: AnswerBranch[] = [];
   for (const velocity of outcome.found) {

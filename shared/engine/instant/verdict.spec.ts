@@ -342,4 +342,38 @@ describe('what an instant needs', () => {
     expect(b[0] - a[0]).toBeCloseTo(-0.5 * Math.sin(1), 9);
     expect(b[1] - a[1]).toBeCloseTo(0.5 * Math.cos(1), 9);
   });
+
+  it('is no particular size: a thousand pinned bodies are solved when they are just determined', () => {
+    const count = 1000;
+    const place = (k: number) => ({ x: k * Math.cos(0.2), y: k * Math.sin(0.2), heading: 0.2 });
+    const bodies = Array.from({ length: count }, (_, k): MotionBody => ({
+      id: `b${k}`,
+      pose: place(k),
+      points: { A: [0, 0], B: [1, 0] },
+    }));
+    const joints = bodies.map(({ id }, k): Joint =>
+      k === 0
+        ? { id: `j${k}`, kind: 'pin', a: at(id, 'A'), ground: true }
+        : { id: `j${k}`, kind: 'pin', a: at(`b${k - 1}`, 'B'), b: at(id, 'A') },
+    );
+    const knowns = bodies.map(({ id }): Known => ({
+      id,
+      quantity: 'angular-velocity',
+      body: id,
+      value: 0.01,
+    }));
+    const solution = solveInstant(problemOf(bodies, joints, knowns));
+    // All turn alike, so the chain is one rigid body about its first pin.
+    const [x, y] = solution.branches[0].points['b999.B'].velocity ?? [NaN, NaN];
+    expect(x).toBeCloseTo(-0.01 * count * Math.sin(0.2), 9);
+    expect(y).toBeCloseTo(0.01 * count * Math.cos(0.2), 9);
+    expect(solution.levels.acceleration).toBeNull();
+    expect(solution.warnings).toContain(
+      'Accelerations: With so many bodies they are sought only where the knowns just fix them.',
+    );
+    const lacking = problemOf(bodies, joints, knowns.slice(1));
+    expect(() => solveInstant(lacking)).toThrow(
+      expect.objectContaining({ code: 'unsupported', field: 'bodies' }),
+    );
+  });
 });
