@@ -201,16 +201,25 @@ export const allowedByKnown = (sheet: Sheet, known: ModelKnown): Allowed | null 
   }
   const angle = s.g[known.directionAt];
   const [ux, uy] = [Math.cos(angle), Math.sin(angle)];
-  const symbol = notation.along(level, uses[0], `of ${notation.pointName(known.a)}`);
+  const point = notation.pointTex(known.a);
+  const symbol: WorkingSymbol = {
+    tex: `${level === 'velocity' ? 'v' : 'a'}_{${point}}`,
+    text: `${level} of ${notation.pointName(known.a)} along its known direction`,
+    unit,
+    of: notation.pointReference(known.a),
+  };
   const truth = ux * mx + uy * my;
-  if (known.magnitudeAt >= 0)
+  const whole = known.magnitudeAt >= 0;
+  if (whole)
     sheet.settle(
       symbol,
       known.line ? Math.sign(truth) * s.g[known.magnitudeAt] : s.g[known.magnitudeAt],
     );
+  const rate = [sheet.scalar(symbol, truth)];
+  const tex = whole ? notation.vectorTex(level, known.a) : `${symbol.tex}\\,\\mathbf u_{${point}}`;
   return {
     place: known.a,
-    parts: [along(`${symbol.tex}\\,\\mathbf u`, [sheet.scalar(symbol, truth)], ux, uy)],
+    parts: [along(tex, rate, ux, uy)],
     text: textOf(sheet, known.a, 'of known direction'),
     uses,
   };

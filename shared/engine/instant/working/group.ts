@@ -213,7 +213,11 @@ const writeClosing = (sheet: Sheet, owner: Owner, group: Group): WorkingEquation
     return addStep(
       sheet,
       `${allowed.text}.${from}`,
-      sheet.vectorEquation(allowed.parts, expression),
+      sheet.vectorEquation(
+        allowed.parts,
+        expression,
+        notation.vectorTex(sheet.level, allowed.place),
+      ),
       allowed.uses[0].id,
       allowed.uses[0].kind,
       expression,

@@ -156,11 +156,12 @@ export class Sheet {
     );
   }
 
-  /** left = right as a vector equation with its components. */
-  vectorEquation(left: readonly Part[], right: readonly Part[]): WorkingEquation[] {
+  /** left = right as a vector equation with its components; `of` is what both sides are. */
+  vectorEquation(left: readonly Part[], right: readonly Part[], of?: string): WorkingEquation[] {
+    const whole = of === undefined || of === partsTex(left) ? '' : `${of} = `;
     const vector: WorkingEquation = {
       role: 'vector',
-      tex: `${partsTex(left)} = ${partsTex(right)}`,
+      tex: `${whole}${partsTex(left)} = ${partsTex(right)}`,
     };
     return [
       vector,
