@@ -12,7 +12,7 @@ import { rowResidual, rowsFor } from './rows';
 import type { Held, LevelResult, Task } from './task';
 import { motionOf } from './task';
 
-const rounds = 60;
+const rounds = 120;
 
 /** Moves the values by the noises, `amounts` standard deviations of each, from `base`. */
 export const shiftValues = (
@@ -66,15 +66,17 @@ export const refine = (
     const adjustment = adjust(a, b, w, structure);
     let change = 0;
     let size = 0;
+    // Steps that keep overshooting, where magnitudes fit badly, are shortened.
+    const share = round < 10 ? 1 : round < 25 ? 0.5 : 0.2;
     for (let i = 0; i < a.columns; i++) {
-      motion[i] += adjustment.x[i] / scales[i];
+      motion[i] += (share * adjustment.x[i]) / scales[i];
       change = Math.max(change, Math.abs(adjustment.x[i]));
       size = Math.max(size, Math.abs(motion[i] * scales[i]));
     }
     for (let j = 0; j < m; j++) {
       if (!task.adjusts[j]) continue;
       change = Math.max(change, Math.abs(adjustment.n[j] - shift[j]) * size * 1e-2);
-      shift[j] = adjustment.n[j];
+      shift[j] += share * (adjustment.n[j] - shift[j]);
     }
     if (m > 0) shiftValues(model, s, base, shift);
     // Where the position is nearly singular, rounding keeps the steps from getting smaller.

@@ -85,10 +85,23 @@ const writeLevel = (
 ): Written => {
   const { model } = answer;
   const { state } = found;
+  const index = answer.branches.indexOf(found);
+  const { id } = model.bodies[asked.body];
+  const sheet = new Sheet(model, state, level, new Notation(model, state));
+  const reported = solution.branches[index].points[`${id}.${sheet.notation.nameAt(asked) ?? ''}`];
   const groups =
-    level === 'acceleration' && found.acceleration === null
+    reported[level] === null
       ? null
       : planGroups(model, equations, state, asked.body, answer.tolerance);
+  if (groups === null && reported[level] !== null) {
+    sheet.add({
+      kind: 'held',
+      text: `The ${level} of ${sheet.notation.pointName(asked)} is fixed by itself, although the motion of the ${sheet.notation.bodyName(asked.body)} is not.`,
+      uses: [sheet.notation.pointReference(asked)],
+    });
+    writeResult(sheet, asked, reported[level], solution, found, answer);
+    return { steps: sheet.steps, chain: [asked.body], complete: false };
+  }
   if (groups === null) {
     const reasons = solution.free.filter((f) => f.level === level).map((f) => f.motion);
     const [help] = solution.helps.filter((h) => h.includes(level));
@@ -99,7 +112,6 @@ const writeLevel = (
     ].join(' ');
     return { steps: [openStep(level, text)], chain: [], complete: false };
   }
-  const sheet = new Sheet(model, state, level, new Notation(model, state));
   for (const group of groups) writeGroup(sheet, group, model.g);
   const known = sheet.carry(asked);
   writeResult(sheet, asked, sheet.evaluate([known]), solution, found, answer);
