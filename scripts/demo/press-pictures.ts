@@ -217,7 +217,7 @@ export async function pressStages(): Promise<Record<Shot['stage'], Stage>> {
             gloss: 0,
             reach: 0.03,
           },
-          { at: upright([x, y], y > 0 ? 0.078 : -0.278) },
+          { at: upright([x, y], -0.003) },
         ),
       ),
     ],

@@ -245,7 +245,7 @@ export function pressDraft(): Draft {
     shots: [...PRESS_SHOTS],
     visible: Object.entries(DATUMS).map(([id, [x, y]]) => ({
       survey: id,
-      point: [x, y > 0 ? 0.075 : -0.28, y + SHAFT_HEIGHT] as const,
+      point: [x, -0.004, y + SHAFT_HEIGHT] as const,
     })),
     whereabouts,
     stages: pressStages,

@@ -9,8 +9,8 @@ export const PRESS_SIGMA = { datum: 0.00008, edge: 0.00015, witness: 0.0004 } as
 export const DATUMS: Record<string, Vec2> = {
   F1: [-0.43, 0.28],
   F2: [0.43, 0.28],
-  F3: [-0.43, -0.74],
-  F4: [0.43, -0.74],
+  F3: [-0.43, -0.68],
+  F4: [0.43, -0.68],
 };
 
 interface Witness {
