@@ -6,7 +6,10 @@ import tseslint from 'typescript-eslint';
 /** The house's arrows: src -> shared <- server; in shared contracts -> engine -> units. */
 const closed = (...patterns) => ['error', { patterns }];
 const door = (group, message) => ({ group, message });
-const noApplication = door(['**/src/app/**', '@angular/*'], 'The application is out of reach here.');
+const noApplication = door(
+  ['**/src/app/**', '@angular/*'],
+  'The application is out of reach here.',
+);
 const noServer = door(['#server/*', '**/server/**'], 'The server is out of reach here.');
 const noNode = door(
   ['node:*', 'fs', 'path', 'crypto', 'os', 'child_process', 'worker_threads'],
@@ -64,7 +67,12 @@ export default tseslint.config(
     ],
     languageOptions: {
       parserOptions: {
-        project: ['./tsconfig.server.json', './tsconfig.shared.json', './tsconfig.spec.json'],
+        project: [
+          './tsconfig.server.json',
+          './tsconfig.shared.json',
+          './tsconfig.spec.json',
+          './tsconfig.e2e.json',
+        ],
         tsconfigRootDir: import.meta.dirname,
       },
     },

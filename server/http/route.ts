@@ -53,5 +53,5 @@ export function implement<E extends Endpoint>(
   handle: Handler<E>,
   before: Route['before'] = () => [],
 ): Route {
-  return { endpoint, handle: handle as Route['handle'], before };
+  return { endpoint, handle: handle, before };
 }

@@ -2,7 +2,7 @@ import { execFileSync } from 'node:child_process';
 import { existsSync, mkdtempSync, readFileSync, readdirSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join, resolve } from 'node:path';
-import { expect, test, type Page } from '@playwright/test';
+import { expect, test, type Locator, type Page } from '@playwright/test';
 import { enter, password, troubles } from './people';
 
 /**
@@ -11,7 +11,7 @@ import { enter, password, troubles } from './people';
  * records it, writes findings; the lead releases; the attorney reads; the archive proves itself.
  */
 const samples = resolve(import.meta.dirname, '../../evidence-samples/spin-on-a-bend');
-const title = 'Spin, walked through';
+const title = `Spin, walked through at ${new Date().toISOString().slice(11, 19)}`;
 
 interface Sample {
   reconstruction: {
@@ -33,6 +33,13 @@ async function choose(page: Page, label: string | RegExp, option: string | RegEx
   await page.getByRole('option', { name: option }).first().click();
 }
 
+/** The open dialog, once it has moved the focus into itself; typing earlier would land elsewhere. */
+async function dialogOf(page: Page): Promise<Locator> {
+  const dialog = page.getByRole('dialog');
+  await expect(dialog.locator(':focus')).toHaveCount(1);
+  return dialog;
+}
+
 async function openCase(page: Page): Promise<void> {
   await page.goto('/cases');
   await page.getByRole('link', { name: title }).click();
@@ -47,7 +54,7 @@ const section = (page: Page, name: string) =>
 
 async function assign(page: Page, role: RegExp, person: RegExp, party?: RegExp): Promise<void> {
   await page.getByRole('button', { name: 'Assign a person' }).click();
-  const dialog = page.getByRole('dialog');
+  const dialog = await dialogOf(page);
   await choose(page, 'Role in the case', role);
   await choose(page, 'Person', person);
   if (party) await choose(page, 'Acts for', party);
@@ -63,16 +70,18 @@ test.describe.serial('the whole thread', () => {
   }) => {
     const lead = await enter(browser, 'lead');
     await lead.getByRole('button', { name: 'Open a case' }).click();
-    await lead.getByLabel('Title').fill(title);
+    await (await dialogOf(lead)).getByLabel('Title').fill(title);
     await choose(lead, 'Kind of incident', 'road, one vehicle');
     await lead.getByRole('button', { name: 'Open the case' }).click();
     await expect(lead.getByRole('heading', { name: title })).toBeVisible();
 
     await lead.getByRole('button', { name: 'Add a question' }).click();
-    await lead.getByLabel('Question').fill('How fast was the car at the first gap in its marks?');
+    await lead
+      .getByLabel('Question', { exact: true })
+      .fill('How fast was the car at the first gap in its marks?');
     await lead.getByRole('button', { name: 'Add the question' }).click();
     await lead.getByRole('button', { name: 'Add a party' }).click();
-    await lead.getByLabel('Name').fill('The claimant');
+    await lead.getByLabel('Name', { exact: true }).fill('The claimant');
     await lead.getByLabel(/^Role, for example/).fill('claimant');
     await lead.getByRole('button', { name: 'Add the party' }).click();
     await expect(lead.getByText('The claimant').first()).toBeVisible();
@@ -103,6 +112,7 @@ test.describe.serial('the whole thread', () => {
     await expect(varo.getByRole('img', { name: /photograph-01\.jpg/ })).toBeVisible();
 
     await varo.getByRole('button', { name: 'Hand over …' }).click();
+    await dialogOf(varo);
     await choose(varo, 'To', /R\. Amadi/);
     await varo.getByLabel('Purpose').fill('Storage');
     await varo
@@ -119,8 +129,8 @@ test.describe.serial('the whole thread', () => {
       .getByRole('link')
       .click();
     await amadi.getByRole('button', { name: 'Accept …' }).click();
-    await amadi.getByLabel('Your password').fill('not the password');
-    const dialog = amadi.getByRole('dialog');
+    const dialog = await dialogOf(amadi);
+    await dialog.getByLabel('Your password').fill('not the password');
     await dialog.getByRole('button', { name: 'Accept', exact: false }).last().click();
     await expect(dialog.getByText(/password is not right/)).toBeVisible();
     await amadi.getByLabel('Your password').fill(password);
@@ -129,9 +139,7 @@ test.describe.serial('the whole thread', () => {
 
     await section(amadi, 'Custody');
     await amadi.getByRole('button', { name: /^Verify/ }).click();
-    await expect(
-      amadi.getByText(/no finding|nothing was found|whole|agree/i).first(),
-    ).toBeVisible();
+    await expect(amadi.getByText('Everything is as it was written.')).toBeVisible();
     expect(troubles(varo)).toEqual([]);
     expect(troubles(amadi)).toEqual([]);
   });
@@ -146,7 +154,7 @@ test.describe.serial('the whole thread', () => {
     await varo.getByLabel('File', { exact: true }).selectOption({ index: 1 });
     await expect(varo.getByRole('button', { name: 'Import the accepted rows' })).toBeEnabled();
     await varo.getByRole('button', { name: 'Import the accepted rows' }).click();
-    await expect(varo.getByText('324 marks')).toBeVisible();
+    await expect(varo.getByText('324 marks', { exact: true })).toBeVisible();
     expect(troubles(varo)).toEqual([]);
   });
 
@@ -159,13 +167,17 @@ test.describe.serial('the whole thread', () => {
     await section(varo, 'Motion');
     await varo.getByRole('button', { name: 'Begin a reconstruction' }).click();
 
-    const tool = (name: string | RegExp) =>
-      varo.getByRole('toolbar').getByRole('button', { name }).click();
+    const panel = varo.locator('app-panel');
+    const tool = async (name: string): Promise<void> => {
+      const button = varo.getByRole('toolbar').getByRole('button', { name });
+      if ((await button.getAttribute('aria-pressed')) !== 'true') await button.click();
+      await expect(button).toHaveAttribute('aria-pressed', 'true');
+    };
     await tool('Bodies');
-    await varo.getByRole('button', { name: 'Add a body' }).click();
+    await panel.getByRole('button', { name: 'Add a body' }).click();
     const [body] = sample.reconstruction.bodies;
     for (const [name, { at, sigma }] of Object.entries(body.points)) {
-      await varo.getByRole('button', { name: 'Add a point' }).click();
+      await panel.getByRole('button', { name: 'Add a point' }).click();
       await varo.getByLabel('Short name, used in the equations').fill(name);
       await varo.getByLabel('Name of the point').fill(`point ${name}`);
       await varo.getByLabel('x forward').fill(`${at[0]} m`);
@@ -175,7 +187,7 @@ test.describe.serial('the whole thread', () => {
       await varo.getByLabel('± y (standard)').press('Tab');
     }
     await tool('Stations');
-    await varo.getByRole('button', { name: 'Add a station' }).click();
+    await panel.getByRole('button', { name: 'Add a station' }).click();
     await varo.getByLabel('What happened then').fill('First gap in all four marks');
 
     await tool('Marks');
@@ -183,11 +195,11 @@ test.describe.serial('the whole thread', () => {
     for (const { survey, point } of station.marks) {
       await choose(varo, 'Mark', new RegExp(`^${survey},`));
       await choose(varo, 'Made by the point', new RegExp(`point ${point}\\b`));
-      await varo.getByLabel(/^The direction in which it moved/).check();
+      await varo.getByRole('checkbox', { name: /The direction in which it moved/ }).check();
     }
     await tool('Knowns');
-    await varo.getByRole('button', { name: 'Add a known' }).click();
-    await choose(varo, 'Point', /point G\b/);
+    await panel.getByRole('button', { name: 'Add a known' }).click();
+    await choose(varo, /^Point$/, /point G\b/);
     await choose(varo, 'How much is known', /magnitude only/i);
     const speed = station.knowns.find((known) => known.magnitude !== undefined);
     await varo.getByLabel('Speed', { exact: true }).fill(`${speed?.magnitude ?? ''} m/s`);
@@ -195,7 +207,7 @@ test.describe.serial('the whole thread', () => {
     await varo.getByLabel('On what basis').fill('Recorder of the car, read out.');
     await varo.getByLabel('On what basis').press('Tab');
 
-    const sheet = varo.getByRole('complementary', { name: /calculation sheet/i });
+    const sheet = varo.getByRole('region', { name: 'Calculation sheet' });
     await expect(sheet.getByText(/over-determined/i).first()).toBeVisible({ timeout: 30_000 });
     await varo.getByRole('button', { name: 'Record computation' }).click();
     await expect(varo.getByText(/^Recorded: /)).toBeVisible({ timeout: 30_000 });

@@ -42,26 +42,9 @@ export function reconstructionOf(scene: Scene, marks: readonly Mark[]): Reconstr
           .filter((joint) => joint.stations && !joint.stations.includes(station.id))
           .map((joint) => joint.id),
       },
-      // The sample's directions were read off the traces: the assignments above say that already.
-      knowns: station.knowns
-        .filter((known) => !isDirectionOfTrace(known, station.marks, byLabel))
-        .map(knownOf),
+      knowns: station.knowns.map(knownOf),
     })),
   };
-}
-
-function isDirectionOfTrace(
-  known: Known,
-  assigned: Scene['reconstruction']['stations'][number]['marks'],
-  byLabel: ReadonlyMap<string, Mark>,
-): boolean {
-  if (known.direction === undefined || known.magnitude !== undefined) return false;
-  return assigned.some(
-    ({ survey, body, point }) =>
-      body === known.at?.body &&
-      point === known.at.point &&
-      (byLabel.get(survey)?.trace ?? null) !== null,
-  );
 }
 
 function jointOf(joint: Joint): ReconstructionJoint {
