@@ -4,6 +4,8 @@ import Point from 'ol/geom/Point';
 import Polygon from 'ol/geom/Polygon';
 import VectorImageLayer from 'ol/layer/VectorImage';
 import VectorSource from 'ol/source/Vector';
+import CircleStyle from 'ol/style/Circle';
+import Fill from 'ol/style/Fill';
 import Icon from 'ol/style/Icon';
 import Stroke from 'ol/style/Stroke';
 import Style, { type StyleFunction } from 'ol/style/Style';
@@ -15,6 +17,9 @@ import type { PlanMark, PlanPoint, PlanTrace } from './plan-content';
 
 /** An ellipse smaller than this on the screen is hidden under its symbol. */
 const leastEllipse = 6;
+
+/** Symbols of a trace that would stand closer than this hide it; they become dots on the line. */
+const closestSymbols = 12;
 
 const markKey = 'mark';
 
@@ -38,6 +43,7 @@ export class MarksLayer {
       feature.setStyle(trace.ground ? styles.ground : styles.trace);
       return feature;
     });
+    const spacings = new Map(traces.map((trace) => [trace.label, spacingOf(trace)]));
     for (const mark of marks) {
       if (mark.covariance !== null && ellipseScale > 0) {
         const ellipse = ellipse95(mark.covariance);
@@ -47,7 +53,14 @@ export class MarksLayer {
       }
       const feature = new Feature(new Point(pair(mark.at)));
       feature.set(markKey, mark, true);
-      feature.setStyle(styles.symbols[mark.kind]);
+      const spacing = mark.trace === null ? undefined : spacings.get(mark.trace);
+      const symbol = styles.symbols[mark.kind];
+      feature.setStyle(
+        spacing === undefined
+          ? symbol
+          : (_feature, resolution) =>
+              spacing / resolution >= closestSymbols ? symbol : styles.dot,
+      );
       features.push(feature);
     }
     this.source.clear(true);
@@ -72,6 +85,16 @@ const isMark = (feature: Feature): boolean => feature.get(markKey) !== undefined
 const markOf = (feature: Feature): PlanMark | null =>
   (feature.get(markKey) as PlanMark | undefined) ?? null;
 
+/** Mean distance between the points of a trace, m. */
+function spacingOf({ path }: PlanTrace): number {
+  if (path.length < 2) return Infinity;
+  let length = 0;
+  for (let i = 1; i < path.length; i++) {
+    length += Math.hypot(path[i][0] - path[i - 1][0], path[i][1] - path[i - 1][1]);
+  }
+  return length / (path.length - 1);
+}
+
 const shownFrom =
   (size: number, style: Style): StyleFunction =>
   (_feature, resolution) =>
@@ -89,6 +112,10 @@ function stylesIn(colours: PlanColours) {
   ) as Record<MarkKind, Style>;
   return {
     symbols,
+    dot: new Style({
+      image: new CircleStyle({ radius: 1.6, fill: new Fill({ color: colours.chalk }) }),
+      zIndex: 2,
+    }),
     trace: new Style({ stroke: new Stroke({ color: faint(colours.chalk), width: 2 }), zIndex: 1 }),
     ground: new Style({ stroke: new Stroke({ color: faint(colours.muted), width: 2 }), zIndex: 0 }),
     ellipse: new Style({ stroke: new Stroke({ color: colours.chalk, width: 1 }), zIndex: 2 }),
