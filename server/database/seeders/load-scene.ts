@@ -209,7 +209,7 @@ async function solve(
     params: { caseId },
     body: {
       name: scene.reconstruction.title.slice(0, 120),
-      assumption: scene.reconstruction.alternatives[0]?.assumption ?? '',
+      assumption: scene.reconstruction.assumption,
       document,
     },
   });

@@ -49,8 +49,9 @@ export function reconstructionOf(scene: Scene, marks: readonly Mark[]): Reconstr
 
 function jointOf(joint: Joint): ReconstructionJoint {
   const { id, a, b } = joint;
+  const measured = { at: joint.at ?? null, sigma: joint.sigma ?? 0 };
   if (joint.kind === 'pin' && joint.ground) {
-    return { kind: 'ground-pin', id, a, at: null, sigma: 0 };
+    return { kind: 'ground-pin', id, a, ...measured };
   }
   if (joint.kind === 'pin' && b) return { kind: 'pin', id, a, b };
   if (joint.kind === 'guide') {
@@ -60,8 +61,7 @@ function jointOf(joint: Joint): ReconstructionJoint {
       a,
       direction: joint.direction ?? 0,
       radius: joint.radius ?? null,
-      at: null,
-      sigma: 0,
+      ...measured,
     };
   }
   return { kind: 'wheel', id, a, steer: joint.steer ?? 0, steerRate: 0 };

@@ -84,6 +84,7 @@ export const scene = z.object({
   }),
   reconstruction: z.object({
     title: z.string(),
+    assumption: z.string(),
     bodies: z.array(
       z.object({
         id: z.string(),
@@ -103,6 +104,9 @@ export const scene = z.object({
         radius: z.number().nullable().optional(),
         steer: z.number().optional(),
         stations: z.array(z.string()).optional(),
+        /** Where a ground pin or a guide was measured, m. */
+        at: vector.optional(),
+        sigma: z.number().optional(),
       }),
     ),
     stations: z.array(
@@ -136,7 +140,6 @@ export const scene = z.object({
         ),
       }),
     ),
-    alternatives: z.array(z.object({ title: z.string(), assumption: z.string() })),
   }),
 });
 export type Scene = z.infer<typeof scene>;
