@@ -1,3 +1,5 @@
+const finest = 1e-6;
+
 /**
  * Rounding for the reader: digits never finer than the range. The value itself is never rounded
  * in what is kept or computed.
@@ -5,6 +7,8 @@
  * The half-width of the interval keeps one significant digit, two where the first is 1 or 2 (one
  * digit alone would then change it by up to half); value and bounds are shown to the same place.
  * JCGM 100:2008, 7.2.6: at most two digits for an uncertainty, the estimate rounded to agree with it.
+ * No step is finer than a millionth of the unit: a joint holds a point still to the computer's
+ * rounding, and fifteen noughts would say that somebody had measured it.
  */
 export function roundingStep(halfWidth: number): number {
   if (!Number.isFinite(halfWidth) || halfWidth <= 0) {
@@ -12,7 +16,7 @@ export function roundingStep(halfWidth: number): number {
   }
   // The first two digits decide after rounding: 2.96 is 3.0, 9.97 is 10.
   const [digits = '1', exponent = '0'] = halfWidth.toExponential(1).split('e');
-  return 10 ** (Number(exponent) - (Number(digits) < 3 ? 1 : 0));
+  return Math.max(finest, 10 ** (Number(exponent) - (Number(digits) < 3 ? 1 : 0)));
 }
 
 /** A number to a place (a power of ten), with a true minus sign: `showTo(-12.34, 0.1)` is "−12.3". */

@@ -14,6 +14,7 @@ describe('rounding to the range', () => {
     [0.0997, 0.01],
     [31, 10],
     [120, 10],
+    [3e-16, 1e-6],
   ])('a half-width of %d is shown in steps of %d', (half, step) => {
     expect(roundingStep(half)).toBeCloseTo(step, 12);
   });

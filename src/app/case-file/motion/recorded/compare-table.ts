@@ -42,6 +42,8 @@ interface Row {
   `,
   styleUrl: '../sheet/sheet-table.scss',
   changeDetection: ChangeDetectionStrategy.OnPush,
+  // It scrolls sideways when it must, so the keyboard has to reach it.
+  host: { tabindex: '0', role: 'group', 'aria-label': 'Comparison' },
 })
 export class CompareTable {
   readonly recorded = input.required<StationAnswer>();

@@ -48,6 +48,8 @@ import { type ShownFigure, showRanged } from '#shared/units/show-quantity';
   `,
   styleUrl: './sheet-table.scss',
   changeDetection: ChangeDetectionStrategy.OnPush,
+  // It scrolls sideways when it must, so the keyboard has to reach it.
+  host: { tabindex: '0', role: 'group', 'aria-label': 'Turning of the bodies' },
 })
 export class BodyTable {
   readonly branch = input.required<MotionBranch>();

@@ -39,6 +39,8 @@ import { rangedOf } from './point-figures';
   `,
   styleUrl: './sheet-table.scss',
   changeDetection: ChangeDetectionStrategy.OnPush,
+  // It scrolls sideways when it must, so the keyboard has to reach it.
+  host: { tabindex: '0', role: 'group', 'aria-label': 'Branches' },
 })
 export class BranchTable {
   readonly branches = input.required<readonly MotionBranch[]>();

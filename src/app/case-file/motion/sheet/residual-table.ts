@@ -45,6 +45,8 @@ const critical = 3.29;
   `,
   styleUrl: './sheet-table.scss',
   changeDetection: ChangeDetectionStrategy.OnPush,
+  // It scrolls sideways when it must, so the keyboard has to reach it.
+  host: { tabindex: '0', role: 'group', 'aria-label': 'Residuals' },
 })
 export class ResidualTable {
   readonly residuals = input.required<readonly Residual[]>();

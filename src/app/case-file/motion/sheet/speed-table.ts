@@ -12,6 +12,8 @@ import { pointRows, scaleOf } from './point-figures';
   templateUrl: './speed-table.html',
   styleUrl: './speed-table.scss',
   changeDetection: ChangeDetectionStrategy.OnPush,
+  // It scrolls sideways when it must, so the keyboard has to reach it.
+  host: { tabindex: '0', role: 'group', 'aria-label': 'Speed of every point' },
 })
 export class SpeedTable {
   private readonly place = inject(Place);
