@@ -3,7 +3,8 @@
  * DATABASE_URL), migrates, loads the demo laboratory once, and serves until Ctrl-C.
  */
 import { spawn } from 'node:child_process';
-import { mkdirSync } from 'node:fs';
+import { existsSync, mkdirSync, readFileSync, readlinkSync, rmSync, writeFileSync } from 'node:fs';
+import { setTimeout as delay } from 'node:timers/promises';
 import { join } from 'node:path';
 import {
   checkNode,
@@ -25,6 +26,9 @@ await runScript(async () => {
 
   const data = join(root, '.data');
   mkdirSync(data, { recursive: true, mode: 0o700 });
+  const pidFile = join(data, 'start.pid');
+  await endEarlier(pidFile);
+  writeFileSync(pidFile, String(process.pid));
   let database = null;
   if (ownDatabase) {
     const { startMariadb } = await import('./mariadb.mjs');
@@ -34,8 +38,26 @@ await runScript(async () => {
     await serve(database, data);
   } finally {
     await database?.stop();
+    rmSync(pidFile, { force: true });
   }
 });
+
+/**
+ * When npm was killed, the start that it began may still run and hold port and database: it is asked
+ * to stop first. Only a process that is a start of this very folder is touched.
+ */
+async function endEarlier(pidFile) {
+  if (!existsSync(pidFile)) return;
+  const earlier = `/proc/${readFileSync(pidFile, 'utf8').trim()}`;
+  try {
+    const here = readlinkSync(`${earlier}/cwd`) === process.cwd();
+    if (!here || !readFileSync(`${earlier}/cmdline`, 'utf8').includes('scripts/start.mjs')) return;
+    process.kill(Number(earlier.slice('/proc/'.length)), 'SIGTERM');
+    for (let i = 0; i < 200 && existsSync(earlier); i++) await delay(100);
+  } catch {
+    // It has ended: nothing is in the way.
+  }
+}
 
 /** Runs the server; resolves when it has ended. */
 async function serve(database, data) {

@@ -7,11 +7,6 @@ await prepareDatabase(config);
 const services = createServices(config);
 const loadTheDemo = config.demo && (await isEmpty());
 const running = await listen(services);
-if (loadTheDemo) await loadDemo(running);
-services.log.info({ address: running.address }, 'serving');
-// scripts/start.mjs waits for this line.
-process.stdout.write(`Centrode serves on ${running.address}\n`);
-
 let stopping = false;
 function stop(): void {
   if (stopping) return;
@@ -25,3 +20,8 @@ process.on('SIGINT', stop);
 process.on('SIGTERM', stop);
 // scripts/start.mjs was killed: nothing may be left that holds the port.
 process.on('disconnect', stop);
+
+if (loadTheDemo) await loadDemo(running);
+services.log.info({ address: running.address }, 'serving');
+// scripts/start.mjs waits for this line.
+process.stdout.write(`Centrode serves on ${running.address}\n`);
