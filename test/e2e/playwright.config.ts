@@ -9,14 +9,14 @@ export default defineConfig({
   outputDir: '../../test-results/browser',
   workers: 1,
   fullyParallel: false,
-  timeout: 90_000,
-  expect: { timeout: 15_000 },
+  timeout: 240_000,
+  expect: { timeout: 30_000 },
   reporter: [['list'], ['json']],
   globalSetup: './serve.ts',
   use: {
     ...devices['Desktop Chrome'],
     viewport: { width: 1280, height: 800 },
-    actionTimeout: 15_000,
+    actionTimeout: 30_000,
     trace: 'retain-on-failure',
     launchOptions: {
       executablePath: '/usr/bin/chromium',
